@@ -1,0 +1,91 @@
+#include "models/scission.h"
+
+#include <math.h>
+
+/* Roots and shares of S(m) for the Markov chain. States: head-to-head (H) and
+ * other (N), P(N->H) = u = fraction/(1 - fraction), P(H->N) = 1. With cH, cN
+ * the chances of a cut, root^2 - (1-u)(1-cN) root - u (1-cH)(1-cN) = 0, and
+ * S(0) = 1, S(1) = 1 - mean cut chance. 1 - root_0 is found without
+ * cancellation: at root = 1 the polynomial is cN + u cH - u cH cN. */
+static void excluded_roots(double fraction, struct scission_chance chance, double one_minus_root[2], double share[2])
+{
+    const double u = fraction / (1.0 - fraction), cH = chance.head_to_head, cN = chance.other;
+    const double b = (1.0 - u) * (1.0 - cN), c = u * (1.0 - cH) * (1.0 - cN);
+    const double width = sqrt(b * b + 4.0 * c);
+    /* d = 1 - root solves d^2 - (2 - b) d + (1 - b - c) = 0 */
+    const double at_one = cN + u * cH - u * cH * cN;
+    const double large = 0.5 * (2.0 - b + width);
+    one_minus_root[0] = at_one / large;
+    one_minus_root[1] = large;
+    const double cut = fraction * cH + (1.0 - fraction) * cN;
+    share[1] = (cut - one_minus_root[0]) / (large - one_minus_root[0]);
+    share[0] = 1.0 - share[1];
+}
+
+struct scission_chains scission_cut(enum scission_neighbours neighbours, double fraction, struct scission_chance chance, double xn)
+{
+    double one_minus_root[2] = {fraction * chance.head_to_head + (1.0 - fraction) * chance.other, 1.0};
+    struct scission_chains chains = {.share = {1.0, 0.0}};
+    if (neighbours == NEIGHBOURS_EXCLUDED) excluded_roots(fraction, chance, one_minus_root, chains.share);
+    const double q = 1.0 / xn;
+    for (int i = 0; i < 2; i++) {
+        const double d = one_minus_root[i];
+        chains.one_minus_w[i] = q + d - q * d;
+        chains.w[i] = 1.0 - chains.one_minus_w[i];
+    }
+    return chains;
+}
+
+double scission_xv(const struct polymer_sums *sums, const struct scission_chains *chains)
+{
+    double sum = 0.0;
+    for (int i = 0; i < 2; i++) {
+        if (chains->share[i] == 0.0) continue;
+        const double d = chains->one_minus_w[i];
+        if (!(d > 0.0 && d < 2.0)) return NAN;
+        sum += chains->share[i] * d * d * polymer_phi(sums, chains->w[i], d);
+    }
+    return pow(sum, 1.0 / sums->a);
+}
+
+double scission_xn(const struct scission_chains *chains)
+{
+    double number = 0.0;
+    for (int i = 0; i < 2; i++) number += chains->share[i] * chains->one_minus_w[i];
+    return 1.0 / number;
+}
+
+/* sum x^2 w^(x-1) = (1 + w)/(1 - w)^3. */
+double scission_xw(const struct scission_chains *chains)
+{
+    double sum = 0.0;
+    for (int i = 0; i < 2; i++) sum += chains->share[i] * (1.0 + chains->w[i]) / chains->one_minus_w[i];
+    return sum;
+}
+
+double scission_fraction(enum scission_neighbours neighbours, double head_to_head_chance, const struct polymer_sums *sums, double xv, double xv_cut)
+{
+    const struct scission_chance chance = {head_to_head_chance, 0.0};
+    if (!(xv_cut >= 1.0 && xv >= 1.0)) return NAN;
+    const double xn = polymer_xn_of_xv(sums, xv), target = 1.0 / xv_cut;
+    /* at fraction 0 nothing is cut */
+    double d0 = 0.0, g0 = 1.0 / xv - target;
+    double d1 = -g0 / (head_to_head_chance * polymer_r(sums->a));
+    for (int i = 0; i < 60; i++) {
+        d1 = fmin(d1, 0.5);
+        const struct scission_chains chains = scission_cut(neighbours, d1, chance, xn);
+        const double inverse = 1.0 / scission_xv(sums, &chains);
+        if (!(inverse > 0.0)) { /* past the longest chains: halve the way */
+            d1 = 0.5 * (d0 + d1);
+            continue;
+        }
+        const double g1 = inverse - target;
+        if (d1 == 0.5 && g1 < 0.0) return NAN;
+        if (g1 == g0 || fabs(d1 - d0) <= 1e-15 * fabs(d1)) break;
+        const double d2 = d1 - g1 * (d1 - d0) / (g1 - g0);
+        d0 = d1;
+        g0 = g1;
+        d1 = d2;
+    }
+    return d1;
+}
