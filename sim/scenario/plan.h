@@ -7,25 +7,21 @@
 #include <stdbool.h>
 #include <stddef.h>
 
+#include "models/analysis.h"
+#include "models/bath.h"
 #include "models/glassware.h"
 #include "models/polymer.h"
 #include "models/scission.h"
 #include "models/solution.h"
 #include "models/tube.h"
 
-enum { INTACT, CLEAVED, SERIES };
 enum { PLAN_MAX_LEVELS = 12, PLAN_MAX_FILLINGS = 12, PLAN_MAX_RUNS = 12, PLAN_MAX_SPARE = 10 };
 
 enum sides { SIDES_ONE, SIDES_TWO };
 enum against_is { AGAINST_STATED, AGAINST_SAME_CONSTANTS };
-enum reads { READS_MEAN, READS_MIDDLE, READS_ENDS };
-enum combine { COMBINE_MEAN, COMBINE_MEDIAN };
-enum extrapolation { HUGGINS, KRAEMER, MARTIN, COMMON_INTERCEPT, SINGLE_POINT };
-enum weighting { WEIGHT_EQUAL, WEIGHT_C_SQUARED };
-enum chain_statistics { CHAIN_DISCRETE, CHAIN_CONTINUOUS };
 enum least { LEAST_HOURS, LEAST_MONEY };
 
-/* What is asked; fractions, shares and levels as plain numbers (0.015). */
+/* What is asked; fractions and shares as plain numbers (0.015). */
 struct question {
     double expect;
     bool has_against, has_within;
@@ -107,7 +103,7 @@ struct bath {
 struct thermometer {
     const char *name;
     double calibration_u_K, reading_u_K, resolution_K;
-    enum reads reads;
+    enum bath_reads reads;
     double price;
 };
 
@@ -115,15 +111,6 @@ struct timer {
     const char *name;
     double hand_u_s, resolution_s, meniscus_u_m;
     double price;
-};
-
-/* What is done with one and the same notebook: candidates that differ here
- * only share their bench work. */
-struct analysis {
-    enum extrapolation extrapolation;
-    enum weighting weighting;
-    bool density_corrected, kinetic_corrected;
-    enum chain_statistics chain_statistics;
 };
 
 struct plan {
