@@ -12,6 +12,8 @@ struct transition {
     double cov[N][N];   /* covariance of the noise, sigma = 1 */
 };
 
+typedef const double (*rows)[N];
+
 static void multiply(double out[N][N], const double a[N][N], const double b[N][N])
 {
     double r[N][N];
@@ -30,7 +32,7 @@ static void carry_over(double out[N][N], const double m[N][N], const double c[N]
     for (int i = 0; i < N; i++)
         for (int j = 0; j < N; j++) mt[i][j] = m[j][i];
     multiply(r, m, c);
-    multiply(out, r, (const double(*)[N])mt);
+    multiply(out, (rows)r, (rows)mt);
 }
 
 /* Exact over h seconds when h is short against both time constants: the series
@@ -44,8 +46,8 @@ static struct transition short_transition(struct bath_times times, double h)
     struct transition t = {.phi = {{1, 0, 0}, {0, 1, 0}, {0, 0, 1}}};
     for (int n = 1; n < 24; n++) {
         double left[N][N];
-        multiply(left, a, (const double(*)[N])spread);
-        multiply(power, a, (const double(*)[N])power);
+        multiply(left, a, (rows)spread);
+        multiply(power, a, (rows)power);
         for (int i = 0; i < N; i++)
             for (int j = 0; j < N; j++) {
                 t.cov[i][j] += spread[i][j] / n;
@@ -149,8 +151,6 @@ static struct functionals run_functionals(struct bath_times times, double run_s,
     }
     return f;
 }
-
-typedef const double (*rows)[N];
 
 struct bath_step bath_run(struct bath_times times, double sigma_K, double run_s, double reset_s, enum bath_reads reads)
 {

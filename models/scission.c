@@ -42,7 +42,7 @@ double scission_xv(const struct polymer_sums *sums, const struct scission_chains
     for (int i = 0; i < 2; i++) {
         if (chains->share[i] == 0.0) continue;
         const double d = chains->one_minus_w[i];
-        if (!(d > 0.0 && d < 2.0)) return NAN;
+        if (!(d > 0.0 && d < 2.0)) return (double)NAN;
         sum += chains->share[i] * d * d * polymer_phi(sums, chains->w[i], d);
     }
     return pow(sum, 1.0 / sums->a);
@@ -66,7 +66,7 @@ double scission_xw(const struct scission_chains *chains)
 double scission_fraction(enum scission_neighbours neighbours, double head_to_head_chance, const struct polymer_sums *sums, double xv, double xv_cut)
 {
     const struct scission_chance chance = {head_to_head_chance, 0.0};
-    if (!(xv_cut >= 1.0 && xv >= 1.0)) return NAN;
+    if (!(xv_cut >= 1.0 && xv >= 1.0)) return (double)NAN;
     const double xn = polymer_xn_of_xv(sums, xv), target = 1.0 / xv_cut;
     /* at fraction 0 nothing is cut */
     double d0 = 0.0, g0 = 1.0 / xv - target;
@@ -80,7 +80,7 @@ double scission_fraction(enum scission_neighbours neighbours, double head_to_hea
             continue;
         }
         const double g1 = inverse - target;
-        if (d1 == 0.5 && g1 < 0.0) return NAN;
+        if (d1 == 0.5 && g1 < 0.0) return (double)NAN;
         if (g1 == g0 || fabs(d1 - d0) <= 1e-15 * fabs(d1)) break;
         const double d2 = d1 - g1 * (d1 - d0) / (g1 - g0);
         d0 = d1;

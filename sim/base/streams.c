@@ -38,8 +38,8 @@ uint64_t streams_study_key(uint64_t seed, uint64_t study)
 
 struct streams_state streams_open(uint64_t study_key, enum streams_purpose purpose, struct streams_place place)
 {
-    const uint64_t where = (uint64_t)purpose << 40 | (uint64_t)place.polymer << 32 | (uint64_t)place.preparation << 24 |
-                           (uint64_t)place.solution << 16 | (uint64_t)place.level << 8 | (uint64_t)place.filling;
+    const uint64_t where = (uint64_t)purpose << 48 | (uint64_t)place.polymer << 40 | (uint64_t)place.preparation << 32 |
+                           (uint64_t)place.solution << 24 | (uint64_t)place.level << 8 | (uint64_t)place.filling;
     const uint64_t key = mix(study_key ^ mix(where + golden));
     const streams_u128 state = (streams_u128)mix(key + golden) << 64 | mix(key + 2 * golden);
     const streams_u128 increment = (streams_u128)mix(key + 3 * golden) << 64 | mix(key + 4 * golden) | 1U;

@@ -56,7 +56,8 @@ enum streams_purpose {
 
 enum streams_solution { STREAMS_NONE, STREAMS_WATER, STREAMS_INTACT, STREAMS_CLEAVED };
 
-/* Where in the study; each below 256. For water the day stands for the level. */
+/* Where in the study; each below 256, the level below 65536. For water the day
+ * stands for the level. */
 struct streams_place {
     unsigned polymer, preparation, solution, level, filling;
 };

@@ -1,0 +1,205 @@
+#include "sim/bench/bench.h"
+
+#include <math.h>
+#include <string.h>
+
+#include "models/solution.h"
+
+/* The filling in the tube: what its runs have in common. */
+struct filled {
+    const struct design_liquid *liquid;
+    double constant[LANES];  /* C f_h */
+    double slow[LANES];      /* dust, drainage, and the solution's offset, on the time */
+    double coil[LANES];      /* y in the tube */
+    double thick[LANES];     /* viscosity over that of water, at the set temperature */
+    double heavy[LANES];     /* what the polymer adds to the density [kg/m3] */
+    double gradient_K[LANES];
+};
+
+void bench_open_day(struct bench *b, double draws[][LANES])
+{
+    const struct bath *const bath = &b->design->plan->bath;
+    FOR_LANES(l)
+    {
+        b->done_s[l] += b->clock_s[l];
+        b->clock_s[l] = 0.0;
+        b->day_K[l] = bath->day_u_K * draws[DRAWS_DAY_OFFSET][l];
+        b->drift_K_s[l] = bath->drift_u_K_s * draws[DRAWS_DRIFT][l];
+        b->bath_K[l] = bath->fluctuation_K * draws[DRAWS_BATH_START][l];
+    }
+}
+
+/* Rounded to the nearest multiple of a resolution; 0 leaves it. Adding and
+ * taking away 1.5 2^52 rounds to a whole number, half to even. */
+static double rounded(double x, double resolution)
+{
+    const double big = 6755399441055744.0;
+    return ((x / resolution + big) - big) * resolution;
+}
+
+static void thicken(const struct bench *b, struct filled *f)
+{
+    const struct design_liquid *const q = f->liquid;
+    const double reagent = 1.0 + b->design->plan->cleavage.reagent_viscosity * q->reagent;
+    const double *const k = b->truth.interaction[q->series < SERIES ? q->series : INTACT];
+    FOR_LANES(l) f->thick[l] = reagent * (1.0 + solution_specific(b->design->plan->material.law, k[l], f->coil[l]));
+}
+
+/* What is in the tube: the liquid, and what the last filling of the day left. */
+static void pour(const struct bench *b, size_t filling, struct filled *f)
+{
+    const struct design *const d = b->design;
+    const struct notebook_filling *const now = &d->filling[filling];
+    const bool first = filling == 0 || now[-1].day != now->day;
+    const size_t i = design_liquid_of(d, now), before = first ? i : design_liquid_of(d, &now[-1]);
+    const double r = d->plan->habits.carry_over;
+    const double weight = 1.0 - d->plan->material.specific_volume_m3_kg * water_density(d->plan->habits.temperature_K);
+    f->liquid = &d->liquid[i];
+    FOR_LANES(l)
+    {
+        f->coil[l] = (1.0 - r) * b->truth.coil[i][l] + r * b->truth.coil[before][l];
+        f->heavy[l] = weight * ((1.0 - r) * b->truth.conc_kg_m3[i][l] + r * b->truth.conc_kg_m3[before][l]);
+    }
+    thicken(b, f);
+}
+
+static void set_up(const struct bench *b, const struct draws_filling *draws, struct filled *f)
+{
+    const struct habits *const h = &b->design->plan->habits;
+    const struct tube *const tube = &b->design->plan->tube;
+    const double pi = 3.14159265358979323846;
+    const double reservoir_m3 = pi / 4.0 * tube->reservoir_bore_m * tube->reservoir_bore_m * tube->head_m;
+    const double charge_u = tube->suspended_level ? 0.0 : h->charge_u_m3 / reservoir_m3;
+    const bool polymer = f->liquid->conc_kg_m3 > 0.0;
+    FOR_LANES(l)
+    {
+        f->constant[l] = tube->constant_m2_s2 *
+                         tube_head_factor(h->tilt_u_rad * draws->once[DRAWS_TILT][l], tube->offset_m / tube->head_m, charge_u * draws->once[DRAWS_CHARGE][l]);
+        f->slow[l] = 1.0 + h->filling_u * draws->once[DRAWS_FILLING_TIME][l];
+        f->gradient_K[l] = b->design->plan->bath.gradient_u_K * draws->once[DRAWS_GRADIENT][l];
+    }
+    if (polymer) FOR_LANES(l) f->slow[l] *= b->truth.solution_slow[l];
+}
+
+/* From the end of the last filling to the first run of this one. The liquid is
+ * poured at room temperature and follows; its deviation from the course
+ * D(s) - R tau_f of bath and gradient decays. */
+static void wait_for(struct bench *b, const struct draws_filling *draws, const struct filled *f)
+{
+    const struct design *const d = b->design;
+    const struct habits *const h = &d->plan->habits;
+    const struct bath_step *const idle = &d->idle;
+    FOR_LANES(l)
+    {
+        const double n0 = draws->once[DRAWS_IDLE_X][l], n1 = draws->once[DRAWS_IDLE_L][l], x = b->bath_K[l];
+        const double poured_s = b->clock_s[l] + h->clean_and_fill_s;
+        const double course = h->temperature_K - b->truth.calibration_K[l] + b->day_K[l] + f->gradient_K[l] + b->drift_K_s[l] * (poured_s - h->lag_s);
+        b->bath_K[l] = idle->from_x[0] * x + idle->noise[0][0] * n0;
+        b->liquid_K[l] = idle->from_x[1] * x + idle->noise[1][0] * n0 + idle->noise[1][1] * n1;
+        b->lag_K[l] = (h->room_K - course) * d->lag_wait;
+        b->clock_s[l] = poured_s + h->equilibrate_s;
+    }
+}
+
+/* Temperatures of one run: the liquid's mean, and what is read. The state goes
+ * on to the start of the next run in the lanes that `go`. */
+static void run_temperatures(struct bench *b, const struct filled *f, double n[][LANES], const double go[LANES], double liquid_K[LANES], double read_K[LANES])
+{
+    const struct plan *const p = b->design->plan;
+    const struct design_liquid *const q = f->liquid;
+    const struct bath_step *const s = &q->step;
+    const double set_K = p->habits.temperature_K, lag_s = p->habits.lag_s;
+    double out[BATH_OUTPUTS][LANES];
+    for (size_t i = 0; i < BATH_OUTPUTS; i++) {
+        FOR_LANES(l) out[i][l] = s->from_x[i] * b->bath_K[l] + s->from_l[i] * b->liquid_K[l];
+        for (size_t j = 0; j <= i; j++) FOR_LANES(l) out[i][l] += s->noise[i][j] * n[DRAWS_BATH + j][l];
+    }
+    FOR_LANES(l)
+    {
+        const double drifted = b->day_K[l] + b->drift_K_s[l] * (b->clock_s[l] + 0.5 * q->nominal_s);
+        liquid_K[l] = set_K - b->truth.calibration_K[l] + drifted + f->gradient_K[l] - b->drift_K_s[l] * lag_s + b->lag_K[l] * q->lag_mean + out[BATH_L_MEAN][l];
+        read_K[l] = set_K + drifted + out[BATH_READING][l] + p->thermometer.reading_u_K * n[DRAWS_READING][l];
+        b->bath_K[l] = go[l] != 0.0 ? out[BATH_X_NEXT][l] : b->bath_K[l];
+        b->liquid_K[l] = go[l] != 0.0 ? out[BATH_L_NEXT][l] : b->liquid_K[l];
+        b->lag_K[l] = go[l] != 0.0 ? b->lag_K[l] * q->lag_left : b->lag_K[l];
+        b->clock_s[l] += go[l] * (q->nominal_s + p->habits.reset_s);
+    }
+    const double resolution = p->thermometer.resolution_K; /* on a Celsius scale */
+    if (resolution > 0.0) FOR_LANES(l) read_K[l] = 273.15 + rounded(read_K[l] - 273.15, resolution);
+}
+
+/* The true efflux time of one run [s]. */
+static void run_efflux(const struct bench *b, struct filled *f, const double liquid_K[LANES], double out_s[LANES])
+{
+    const struct design *const d = b->design;
+    const struct plan *const p = d->plan;
+    const double dense = 1.0 + p->cleavage.reagent_density * f->liquid->reagent;
+    const double swells = p->material.temperature_coefficient_1_K;
+    double nu[LANES];
+    if (swells != 0.0) {
+        struct filled warm = *f;
+        FOR_LANES(l) warm.coil[l] *= exp(swells * (liquid_K[l] - p->habits.temperature_K));
+        thicken(b, &warm);
+        memcpy(f->thick, warm.thick, sizeof f->thick);
+    }
+    FOR_LANES(l) nu[l] = water_fit_viscosity(&d->water, liquid_K[l]) * f->thick[l] / (water_density(liquid_K[l]) * dense + f->heavy[l]);
+    if (p->tube.ends == TUBE_FLARED)
+        FOR_LANES(l) out_s[l] = tube_efflux(f->constant[l], TUBE_FLARED, b->truth.kinetic[l], nu[l]);
+    else
+        FOR_LANES(l) out_s[l] = tube_efflux(f->constant[l], TUBE_SQUARE, b->truth.kinetic[l], nu[l]);
+    FOR_LANES(l) out_s[l] *= f->slow[l];
+}
+
+/* What the stopwatch shows: bubbles, marks, hand, resolution. */
+static void run_timing(const struct plan *p, double n[][LANES], double time_s[LANES])
+{
+    const double pi = 3.14159265358979323846, root2 = 1.41421356237309504880;
+    const double neck_m2 = pi / 4.0 * p->tube.neck_bore_m * p->tube.neck_bore_m;
+    const double marks = neck_m2 / p->tube.bulb_volume_m3 * root2 * p->timer.meniscus_u_m, hand_s = root2 * p->timer.hand_u_s;
+    const double chance = p->habits.bubble_chance;
+    FOR_LANES(l)
+    if (n[DRAWS_BUBBLE][l] < chance) time_s[l] *= 1.0 - p->habits.bubble_delay * log1p(-n[DRAWS_BUBBLE][l] / chance);
+    FOR_LANES(l) time_s[l] = time_s[l] * (1.0 + marks * n[DRAWS_MENISCUS][l]) + hand_s * n[DRAWS_HAND][l];
+    const double resolution = p->timer.resolution_s;
+    if (resolution > 0.0) FOR_LANES(l) time_s[l] = rounded(time_s[l], resolution);
+}
+
+/* Run number `run` of a filling, in the lanes that go. */
+static void make_run(struct bench *b, size_t filling, struct filled *f, struct draws_filling *draws, const double go[LANES], size_t run)
+{
+    double liquid_K[LANES];
+    struct notebook_run *const entry = &notebook_runs(&b->book, filling)[run];
+    run_temperatures(b, f, draws->run[run], go, liquid_K, entry->read_K);
+    run_efflux(b, f, liquid_K, entry->time_s);
+    run_timing(b->design->plan, draws->run[run], entry->time_s);
+    notebook_bring_to_set(&b->design->assumed, entry);
+    FOR_LANES(l) if (go[l] != 0.0) b->book.made[filling][l]++;
+}
+
+void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
+{
+    const struct design *const d = b->design;
+    const size_t planned = d->filling[filling].runs;
+    struct filled f;
+    double go[LANES];
+    if (b->started_s) memcpy(b->started_s[filling], b->clock_s, sizeof b->clock_s);
+    pour(b, filling, &f);
+    set_up(b, draws, &f);
+    wait_for(b, draws, &f);
+    memset(b->book.made[filling], 0, LANES);
+    FOR_LANES(l) go[l] = 1.0;
+    for (size_t r = 0; r < planned; r++) make_run(b, filling, &f, draws, go, r);
+    for (size_t r = planned; r < planned + d->plan->habits.spare_runs; r++) {
+        bool any = false;
+        FOR_LANES(l)
+        {
+            const bool more = go[l] != 0.0 && !notebook_agrees(&d->assumed, &b->book, filling, l);
+            go[l] = more ? 1.0 : 0.0;
+            any = any || more;
+            b->spare_runs[l] += go[l];
+            if (more) draws_spare(draws, l, r);
+        }
+        if (!any) break;
+        make_run(b, filling, &f, draws, go, r);
+    }
+}

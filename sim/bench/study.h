@@ -1,0 +1,44 @@
+/* Whole studies, LANES at a time: draw, work the bench, reduce. */
+#ifndef VICINAL_BENCH_STUDY_H
+#define VICINAL_BENCH_STUDY_H
+
+#include "sim/bench/bench.h"
+#include "sim/reduce/reduction.h"
+
+enum { STUDY_MAX_FRACTIONS = 2 };
+
+/* What to play: one design at one or two fractions on the same draws, its
+ * notebooks reduced in each of the given ways. */
+struct study_job {
+    const struct design *design;
+    uint64_t seed;
+    size_t fractions;
+    double fraction[STUDY_MAX_FRACTIONS];
+    size_t analyses;
+    const struct analysis *analysis;
+};
+
+/* The bench work of LANES studies at one fraction. */
+struct study_bench {
+    double clock_s[LANES], spare_runs[LANES];
+};
+
+/* A block's slot: for each fraction a study_bench, then for each fraction and
+ * analysis a reduction_result. */
+size_t study_slot_size(const struct study_job *job);
+const struct study_bench *study_bench_of(const struct study_job *job, const void *slot, size_t fraction);
+const struct reduction_result *study_result_of(const struct study_job *job, const void *slot, size_t fraction, size_t analysis);
+
+/* Memory that playing one block needs. */
+size_t study_scratch_size(const struct study_job *job);
+
+/* Play block number `block` (studies block * LANES ...): a spread_item whose
+ * context is a const struct study_job. */
+void study_play(size_t block, const void *job, void *slot, void *scratch);
+
+/* Play one block and keep what the notebook of each lane says; `started_s`
+ * [fillings] gets the clock at which each filling began. For the synthetic
+ * notebook and the figures; fraction number 0. */
+void study_show(size_t block, const struct study_job *job, void *scratch, struct notebook *book, double (*started_s)[LANES]);
+
+#endif

@@ -1,0 +1,117 @@
+#include "sim/reduce/reduction.h"
+
+#include <math.h>
+#include <string.h>
+
+size_t reduction_size(const struct notebook_layout *layout)
+{
+    return (layout->fillings + layout->days) * sizeof(double[LANES]);
+}
+
+struct reduction_times reduction_place(const struct notebook_layout *layout, void *memory)
+{
+    double(*const rows)[LANES] = memory;
+    return (struct reduction_times){rows, rows + layout->fillings};
+}
+
+void reduction_combine(const struct assumed *a, const struct notebook *book, struct reduction_times *times)
+{
+    const struct notebook_layout *const layout = book->layout;
+    size_t day = 0, waters = 0;
+    for (size_t d = 0; d < layout->days; d++) memset(times->water_s[d], 0, sizeof times->water_s[d]);
+    for (size_t f = 0; f < layout->fillings; f++) {
+        notebook_filling_time(a, book, f, times->filling_s[f]);
+        const struct notebook_filling *const filling = &layout->filling[f];
+        if (!filling->water) continue;
+        waters = filling->day == day ? waters + 1 : 1;
+        day = filling->day;
+        const double weight = 1.0 / (double)waters; /* running mean */
+        FOR_LANES(l) times->water_s[day][l] += (times->filling_s[f][l] - times->water_s[day][l]) * weight;
+    }
+    for (size_t d = 1; d < layout->days; d++)
+        if (times->water_s[d][0] == 0.0) memcpy(times->water_s[d], times->water_s[0], sizeof times->water_s[d]);
+}
+
+void reduction_relative(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
+                        struct reduction_levels *out)
+{
+    const double kinetic = how->kinetic_corrected ? a->kinetic : 0.0;
+    double count[SERIES][ASSUMED_MAX_LEVELS] = {{0}};
+    memset(out, 0, sizeof *out);
+    for (size_t f = 0; f < book->layout->fillings; f++) {
+        const struct notebook_filling *const filling = &book->layout->filling[f];
+        if (filling->water) continue;
+        const double density = how->density_corrected ? a->density_ratio[filling->series][filling->level] : 1.0;
+        const double *const t = times->filling_s[f], *const t0 = times->water_s[filling->day];
+        double *const sum = out->relative[filling->series][filling->level];
+        count[filling->series][filling->level] += 1.0;
+        FOR_LANES(l)
+        {
+            /* C t0 - k(t0) is nu_w itself */
+            const double C = (a->water_m2_s + tube_kinetic(a->ends, kinetic, t0[l])) / t0[l];
+            sum[l] += tube_viscosity(C, a->ends, kinetic, t[l]) * density / a->water_m2_s;
+        }
+    }
+    for (size_t s = 0; s < SERIES; s++)
+        for (size_t j = 0; j < a->levels[s]; j++) FOR_LANES(l) out->relative[s][j][l] /= count[s][j];
+}
+
+static double single_point(size_t n, const double *conc, const double *relative)
+{
+    double sum = 0.0;
+    for (size_t i = 0; i < n; i++) sum += sqrt(2.0 * (relative[i] - 1.0 - log(relative[i]))) / conc[i];
+    return sum / (double)n;
+}
+
+double reduction_extrapolate(const struct analysis *how, size_t n, const double *conc, const double *relative, struct line lines[2])
+{
+    double weight[ASSUMED_MAX_LEVELS], y[2][ASSUMED_MAX_LEVELS];
+    for (size_t i = 0; i < n; i++)
+        if (!(relative[i] > 1.0)) return (double)NAN; /* no thicker than water: nothing to extrapolate */
+    if (how->extrapolation == SINGLE_POINT) return single_point(n, conc, relative);
+    const bool both = how->extrapolation == COMMON_INTERCEPT;
+    for (size_t i = 0; i < n; i++) {
+        const double reduced = (relative[i] - 1.0) / conc[i];
+        weight[i] = how->weighting == WEIGHT_C_SQUARED ? conc[i] * conc[i] : 1.0;
+        if (how->extrapolation == HUGGINS || both) y[0][i] = reduced;
+        if (how->extrapolation == KRAEMER || both) y[both][i] = log(relative[i]) / conc[i];
+        if (how->extrapolation == MARTIN) y[0][i] = log(reduced);
+    }
+    struct line fit[2];
+    if (both)
+        line_fit_common(n, conc, (const double *const[2]){y[0], y[1]}, weight, fit);
+    else
+        fit[0] = line_fit(n, conc, y[0], weight);
+    if (lines) memcpy(lines, fit, (both ? 2 : 1) * sizeof *lines);
+    return how->extrapolation == MARTIN ? exp(fit[0].intercept) : fit[0].intercept;
+}
+
+double reduction_fraction(const struct assumed *a, enum chain_statistics statistics, const double Mv_kg_mol[SERIES])
+{
+    if (statistics == CHAIN_CONTINUOUS)
+        return a->unit_kg_mol * a->r * (1.0 / Mv_kg_mol[CLEAVED] - 1.0 / Mv_kg_mol[INTACT]) / a->head_to_head_chance;
+    return scission_fraction(a->neighbours, a->head_to_head_chance, a->sums, Mv_kg_mol[INTACT] / a->unit_kg_mol, Mv_kg_mol[CLEAVED] / a->unit_kg_mol);
+}
+
+void reduction_run(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
+                   struct reduction_result *out)
+{
+    struct reduction_levels levels;
+    reduction_relative(a, how, book, times, &levels);
+    FOR_LANES(l)
+    {
+        double Mv[SERIES];
+        bool answered = true;
+        for (size_t s = 0; s < SERIES; s++) {
+            double relative[ASSUMED_MAX_LEVELS];
+            for (size_t j = 0; j < a->levels[s]; j++) relative[j] = levels.relative[s][j][l];
+            const double intrinsic = reduction_extrapolate(how, a->levels[s], a->conc_kg_m3[s], relative, NULL);
+            answered = answered && intrinsic > 0.0 && isfinite(intrinsic);
+            Mv[s] = polymer_viscosity_average(a->K_m3_kg, a->a, intrinsic);
+            out->intrinsic_m3_kg[s][l] = intrinsic;
+            out->molar_mass_kg_mol[s][l] = Mv[s];
+        }
+        out->delta[l] = answered ? reduction_fraction(a, how->chain_statistics, Mv) : (double)NAN;
+        if (!isfinite(out->delta[l])) out->delta[l] = (double)NAN;
+    }
+}
