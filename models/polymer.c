@@ -27,6 +27,7 @@ double polymer_viscosity_average(double K_m3_kg, double a, double intrinsic_m3_k
 void polymer_sums_make(struct polymer_sums *sums, double a)
 {
     sums->a = a;
+    sums->r = polymer_r(a);
     sums->gamma = gsl_sf_gamma(2.0 + a);
     double over_factorial = 1.0;
     for (int k = 0; k < POLYMER_NEAR; k++) {
@@ -67,20 +68,22 @@ double polymer_xv_of_xn(const struct polymer_sums *sums, double xn)
     return pow(q * q * polymer_phi(sums, 1.0 - q, q), 1.0 / sums->a);
 }
 
-/* 1/xv is nearly r/xn, so that a secant on it settles in a few steps. */
+/* 1/xv is nearly r/xn, so that a secant on it settles in a few steps: once a
+ * step is below 1e-9 of the root, the next would be below rounding. */
 double polymer_xn_of_xv(const struct polymer_sums *sums, double xv)
 {
     const double target = 1.0 / xv;
-    double q0 = target * 0.5, g0 = 1.0 / polymer_xv_of_xn(sums, 1.0 / q0) - target;
-    double q1 = q0 - g0 * q0 / (g0 + target);
-    for (int i = 0; i < 60; i++) {
+    double q0 = fmin(target / sums->r, 1.0), g0 = 1.0 / polymer_xv_of_xn(sums, 1.0 / q0) - target;
+    double q1 = q0 - g0 / sums->r;
+    for (int i = 0; i < 60 && q1 != q0; i++) {
         q1 = fmin(q1, 1.0);
         const double g1 = 1.0 / polymer_xv_of_xn(sums, 1.0 / q1) - target;
-        if (g1 == g0 || fabs(q1 - q0) <= 1e-15 * q1) break;
-        const double q2 = q1 - g1 * (q1 - q0) / (g1 - g0);
+        if (g1 == g0) break;
+        const double step = g1 * (q1 - q0) / (g1 - g0);
         q0 = q1;
         g0 = g1;
-        q1 = q2;
+        q1 -= step;
+        if (fabs(step) <= 1e-9 * q1) break;
     }
     return 1.0 / q1;
 }

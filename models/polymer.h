@@ -23,6 +23,7 @@ double polymer_viscosity_average(double K_m3_kg, double a, double intrinsic_m3_k
 enum { POLYMER_NEAR = 26, POLYMER_POWERS = 400 };
 struct polymer_sums {
     double a;
+    double r;                  /* polymer_r(a) */
     double gamma;              /* Gamma(2+a) */
     double near[POLYMER_NEAR]; /* zeta(-(1+a)-k) (-1)^k/k! */
     double power[POLYMER_POWERS]; /* (i+1)^(1+a) */

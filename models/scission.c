@@ -70,8 +70,8 @@ double scission_fraction(enum scission_neighbours neighbours, double head_to_hea
     const double xn = polymer_xn_of_xv(sums, xv), target = 1.0 / xv_cut;
     /* at fraction 0 nothing is cut */
     double d0 = 0.0, g0 = 1.0 / xv - target;
-    double d1 = -g0 / (head_to_head_chance * polymer_r(sums->a));
-    for (int i = 0; i < 60; i++) {
+    double d1 = -g0 / (head_to_head_chance * sums->r);
+    for (int i = 0; i < 60 && d1 != d0; i++) {
         d1 = fmin(d1, 0.5);
         const struct scission_chains chains = scission_cut(neighbours, d1, chance, xn);
         const double inverse = 1.0 / scission_xv(sums, &chains);
@@ -81,11 +81,12 @@ double scission_fraction(enum scission_neighbours neighbours, double head_to_hea
         }
         const double g1 = inverse - target;
         if (d1 == 0.5 && g1 < 0.0) return (double)NAN;
-        if (g1 == g0 || fabs(d1 - d0) <= 1e-15 * fabs(d1)) break;
-        const double d2 = d1 - g1 * (d1 - d0) / (g1 - g0);
+        if (g1 == g0) break;
+        const double step = g1 * (d1 - d0) / (g1 - g0);
         d0 = d1;
         g0 = g1;
-        d1 = d2;
+        d1 -= step;
+        if (fabs(step) <= 1e-9 * fabs(d1)) break; /* the next would be below rounding */
     }
     return d1;
 }

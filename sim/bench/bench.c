@@ -46,7 +46,7 @@ static void thicken(const struct bench *b, struct filled *f)
 }
 
 /* What is in the tube: the liquid, and what the last filling of the day left. */
-static void pour(const struct bench *b, size_t filling, struct filled *f)
+LANES_WIDE static void pour(const struct bench *b, size_t filling, struct filled *f)
 {
     const struct design *const d = b->design;
     const struct notebook_filling *const now = &d->filling[filling];
@@ -63,7 +63,7 @@ static void pour(const struct bench *b, size_t filling, struct filled *f)
     thicken(b, f);
 }
 
-static void set_up(const struct bench *b, const struct draws_filling *draws, struct filled *f)
+LANES_WIDE static void set_up(const struct bench *b, const struct draws_filling *draws, struct filled *f)
 {
     const struct habits *const h = &b->design->plan->habits;
     const struct tube *const tube = &b->design->plan->tube;
@@ -84,7 +84,7 @@ static void set_up(const struct bench *b, const struct draws_filling *draws, str
 /* From the end of the last filling to the first run of this one. The liquid is
  * poured at room temperature and follows; its deviation from the course
  * D(s) - R tau_f of bath and gradient decays. */
-static void wait_for(struct bench *b, const struct draws_filling *draws, const struct filled *f)
+LANES_WIDE static void wait_for(struct bench *b, const struct draws_filling *draws, const struct filled *f)
 {
     const struct design *const d = b->design;
     const struct habits *const h = &d->plan->habits;
@@ -101,35 +101,51 @@ static void wait_for(struct bench *b, const struct draws_filling *draws, const s
     }
 }
 
+/* The joint step of bath and liquid over one run and its reset. */
+static inline void run_step(const struct bath_step *s, const struct bench *b, double n[][LANES], double out[BATH_OUTPUTS][LANES])
+{
+    const double *const x = b->bath_K, *const y = b->liquid_K;
+    const double *const n0 = n[DRAWS_BATH], *const n1 = n[DRAWS_BATH + 1], *const n2 = n[DRAWS_BATH + 2], *const n3 = n[DRAWS_BATH + 3];
+    double next[BATH_OUTPUTS][LANES];
+    for (size_t i = 0; i < BATH_OUTPUTS; i++) {
+        const double *const e = s->noise[i], from_x = s->from_x[i], from_l = s->from_l[i];
+        FOR_LANES(l) next[i][l] = from_x * x[l] + from_l * y[l] + e[0] * n0[l] + e[1] * n1[l] + e[2] * n2[l] + e[3] * n3[l];
+    }
+    memcpy(out, next, sizeof next);
+}
+
 /* Temperatures of one run: the liquid's mean, and what is read. The state goes
  * on to the start of the next run in the lanes that `go`. */
-static void run_temperatures(struct bench *b, const struct filled *f, double n[][LANES], const double go[LANES], double liquid_K[LANES], double read_K[LANES])
+LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f, double n[][LANES], const double go[LANES], double liquid_K[LANES], double read_K[LANES])
 {
     const struct plan *const p = b->design->plan;
     const struct design_liquid *const q = f->liquid;
-    const struct bath_step *const s = &q->step;
-    const double set_K = p->habits.temperature_K, lag_s = p->habits.lag_s;
-    double out[BATH_OUTPUTS][LANES];
-    for (size_t i = 0; i < BATH_OUTPUTS; i++) {
-        FOR_LANES(l) out[i][l] = s->from_x[i] * b->bath_K[l] + s->from_l[i] * b->liquid_K[l];
-        for (size_t j = 0; j <= i; j++) FOR_LANES(l) out[i][l] += s->noise[i][j] * n[DRAWS_BATH + j][l];
+    const double set_K = p->habits.temperature_K, lag_s = p->habits.lag_s, reading_u = p->thermometer.reading_u_K;
+    const double half_s = 0.5 * q->nominal_s, step_s = q->nominal_s + p->habits.reset_s, lag_mean = q->lag_mean, lag_left = q->lag_left;
+    double out[BATH_OUTPUTS][LANES], liquid[LANES], read[LANES];
+    run_step(&q->step, b, n, out);
+    FOR_LANES(l)
+    {
+        const double drifted = b->day_K[l] + b->drift_K_s[l] * (b->clock_s[l] + half_s);
+        liquid[l] = set_K - b->truth.calibration_K[l] + drifted + f->gradient_K[l] - b->drift_K_s[l] * lag_s + b->lag_K[l] * lag_mean + out[BATH_L_MEAN][l];
+        read[l] = set_K + drifted + out[BATH_READING][l] + reading_u * n[DRAWS_READING][l];
     }
     FOR_LANES(l)
     {
-        const double drifted = b->day_K[l] + b->drift_K_s[l] * (b->clock_s[l] + 0.5 * q->nominal_s);
-        liquid_K[l] = set_K - b->truth.calibration_K[l] + drifted + f->gradient_K[l] - b->drift_K_s[l] * lag_s + b->lag_K[l] * q->lag_mean + out[BATH_L_MEAN][l];
-        read_K[l] = set_K + drifted + out[BATH_READING][l] + p->thermometer.reading_u_K * n[DRAWS_READING][l];
-        b->bath_K[l] = go[l] != 0.0 ? out[BATH_X_NEXT][l] : b->bath_K[l];
-        b->liquid_K[l] = go[l] != 0.0 ? out[BATH_L_NEXT][l] : b->liquid_K[l];
-        b->lag_K[l] = go[l] != 0.0 ? b->lag_K[l] * q->lag_left : b->lag_K[l];
-        b->clock_s[l] += go[l] * (q->nominal_s + p->habits.reset_s);
+        const double stay = 1.0 - go[l]; /* one of the two is zero */
+        b->bath_K[l] = go[l] * out[BATH_X_NEXT][l] + stay * b->bath_K[l];
+        b->liquid_K[l] = go[l] * out[BATH_L_NEXT][l] + stay * b->liquid_K[l];
+        b->lag_K[l] *= go[l] * lag_left + stay;
+        b->clock_s[l] += go[l] * step_s;
     }
     const double resolution = p->thermometer.resolution_K; /* on a Celsius scale */
-    if (resolution > 0.0) FOR_LANES(l) read_K[l] = 273.15 + rounded(read_K[l] - 273.15, resolution);
+    if (resolution > 0.0) FOR_LANES(l) read[l] = 273.15 + rounded(read[l] - 273.15, resolution);
+    memcpy(liquid_K, liquid, sizeof liquid);
+    memcpy(read_K, read, sizeof read);
 }
 
 /* The true efflux time of one run [s]. */
-static void run_efflux(const struct bench *b, struct filled *f, const double liquid_K[LANES], double out_s[LANES])
+LANES_WIDE static void run_efflux(const struct bench *b, struct filled *f, const double liquid_K[LANES], double out_s[LANES])
 {
     const struct design *const d = b->design;
     const struct plan *const p = d->plan;
@@ -151,7 +167,7 @@ static void run_efflux(const struct bench *b, struct filled *f, const double liq
 }
 
 /* What the stopwatch shows: bubbles, marks, hand, resolution. */
-static void run_timing(const struct plan *p, double n[][LANES], double time_s[LANES])
+LANES_WIDE static void run_timing(const struct plan *p, double n[][LANES], double time_s[LANES])
 {
     const double pi = 3.14159265358979323846, root2 = 1.41421356237309504880;
     const double neck_m2 = pi / 4.0 * p->tube.neck_bore_m * p->tube.neck_bore_m;
@@ -176,10 +192,31 @@ static void make_run(struct bench *b, size_t filling, struct filled *f, struct d
     FOR_LANES(l) if (go[l] != 0.0) b->book.made[filling][l]++;
 }
 
-void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
+/* Spare runs in the lanes whose runs do not agree, while there are any left. */
+static void make_spare_runs(struct bench *b, size_t filling, struct filled *f, struct draws_filling *draws)
 {
     const struct design *const d = b->design;
     const size_t planned = d->filling[filling].runs;
+    bool agreed[LANES];
+    notebook_agree(&d->assumed, &b->book, filling, agreed);
+    for (size_t r = planned; r < planned + d->plan->habits.spare_runs; r++) {
+        double go[LANES];
+        bool any = false;
+        FOR_LANES(l)
+        {
+            go[l] = agreed[l] ? 0.0 : 1.0;
+            b->spare_runs[l] += go[l];
+            any = any || !agreed[l];
+            if (!agreed[l]) draws_spare(draws, l, r);
+        }
+        if (!any) return;
+        make_run(b, filling, f, draws, go, r);
+        FOR_LANES(l) agreed[l] = agreed[l] || notebook_agrees(&d->assumed, &b->book, filling, l);
+    }
+}
+
+void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
+{
     struct filled f;
     double go[LANES];
     if (b->started_s) memcpy(b->started_s[filling], b->clock_s, sizeof b->clock_s);
@@ -188,18 +225,6 @@ void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
     wait_for(b, draws, &f);
     memset(b->book.made[filling], 0, LANES);
     FOR_LANES(l) go[l] = 1.0;
-    for (size_t r = 0; r < planned; r++) make_run(b, filling, &f, draws, go, r);
-    for (size_t r = planned; r < planned + d->plan->habits.spare_runs; r++) {
-        bool any = false;
-        FOR_LANES(l)
-        {
-            const bool more = go[l] != 0.0 && !notebook_agrees(&d->assumed, &b->book, filling, l);
-            go[l] = more ? 1.0 : 0.0;
-            any = any || more;
-            b->spare_runs[l] += go[l];
-            if (more) draws_spare(draws, l, r);
-        }
-        if (!any) break;
-        make_run(b, filling, &f, draws, go, r);
-    }
+    for (size_t r = 0; r < b->design->filling[filling].runs; r++) make_run(b, filling, &f, draws, go, r);
+    make_spare_runs(b, filling, &f, draws);
 }

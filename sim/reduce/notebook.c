@@ -20,7 +20,7 @@ struct notebook notebook_place(const struct notebook_layout *layout, void *memor
     return book;
 }
 
-void notebook_bring_to_set(const struct assumed *a, struct notebook_run *run)
+LANES_WIDE void notebook_bring_to_set(const struct assumed *a, struct notebook_run *run)
 {
     if (!a->record)
         memcpy(run->at_set_s, run->time_s, sizeof run->at_set_s);
@@ -68,6 +68,23 @@ bool notebook_agrees(const struct assumed *a, const struct notebook *book, size_
     const size_t n = book->layout->filling[filling].runs;
     double best[NOTEBOOK_MAX_RUNS];
     return n == 1 || notebook_best(book, filling, lane, best) <= a->agreement * mean(best, n);
+}
+
+LANES_WIDE void notebook_agree(const struct assumed *a, const struct notebook *book, size_t filling, bool out[LANES])
+{
+    const struct notebook_run *const run = notebook_runs(book, filling);
+    const size_t n = book->layout->filling[filling].runs;
+    double least[LANES], most[LANES], sum[LANES] = {0};
+    FOR_LANES(l) least[l] = most[l] = run[0].at_set_s[l];
+    for (size_t i = 0; i < n; i++)
+        FOR_LANES(l)
+        {
+            const double t = run[i].at_set_s[l];
+            least[l] = t < least[l] ? t : least[l];
+            most[l] = t > most[l] ? t : most[l];
+            sum[l] += t;
+        }
+    FOR_LANES(l) out[l] = most[l] - least[l] <= a->agreement * (sum[l] / (double)n);
 }
 
 void notebook_filling_time(const struct assumed *a, const struct notebook *book, size_t filling, double out_s[LANES])

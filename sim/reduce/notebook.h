@@ -49,8 +49,12 @@ void notebook_bring_to_set(const struct assumed *a, struct notebook_run *run);
  * their max - min. 1 <= n <= runs made. */
 double notebook_best(const struct notebook *book, size_t filling, int lane, double best[]);
 
-/* Whether the best n runs of a filling agree: (max - min)/mean <= agreement. */
+/* Whether the best n runs of a filling agree: (max - min)/mean <= agreement.
+ * One run is never checked. */
 bool notebook_agrees(const struct assumed *a, const struct notebook *book, size_t filling, int lane);
+
+/* The same for all lanes after the planned runs, when nothing is to choose. */
+void notebook_agree(const struct assumed *a, const struct notebook *book, size_t filling, bool out[LANES]);
 
 /* The time of a filling [s], lane by lane: mean or median of its best runs. */
 void notebook_filling_time(const struct assumed *a, const struct notebook *book, size_t filling, double out_s[LANES]);

@@ -32,7 +32,7 @@ void reduction_combine(const struct assumed *a, const struct notebook *book, str
         if (times->water_s[d][0] == 0.0) memcpy(times->water_s[d], times->water_s[0], sizeof times->water_s[d]);
 }
 
-void reduction_relative(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
+LANES_WIDE void reduction_relative(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
                         struct reduction_levels *out)
 {
     const double kinetic = how->kinetic_corrected ? a->kinetic : 0.0;
