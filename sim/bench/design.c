@@ -121,10 +121,16 @@ bool design_make(struct design *d, const struct plan *plan, const struct cost_ru
     flasks_choose(d);
     lay_assumed(d);
     lay_times(d);
-    if (plan->analysis.extrapolation != SINGLE_POINT && (plan->levels[INTACT] < 2 || plan->levels[CLEAVED] < 2) && d->why[0] == '\0')
-        snprintf(d->why, sizeof d->why, "one level gives no line; a single-point extrapolation would do");
     d->preparation_s = flasks_preparation_s(d, cost);
     return days_lay_out(d);
+}
+
+const char *design_why(const struct design *d, const struct analysis *how)
+{
+    const bool short_line = d->plan->levels[INTACT] < 2 || d->plan->levels[CLEAVED] < 2;
+    if (d->why[0] != '\0') return d->why;
+    if (how->extrapolation != SINGLE_POINT && short_line) return "one level gives no line: a second one is missing (a single-point extrapolation does without)";
+    return NULL;
 }
 
 void design_free(struct design *d)

@@ -67,6 +67,10 @@ struct design {
 bool design_make(struct design *d, const struct plan *plan, const struct cost_rules *cost, double expect);
 void design_free(struct design *d);
 
+/* Why a plan reduced in this way is impossible, with what is missing; NULL when
+ * it is not. */
+const char *design_why(const struct design *d, const struct analysis *how);
+
 /* Which liquid a filling takes. */
 size_t design_liquid_of(const struct design *d, const struct notebook_filling *filling);
 

@@ -5,14 +5,12 @@
 #include <stdbool.h>
 #include <stddef.h>
 
-#include "sim/scenario/plan.h"
+#include "sim/judge/moments.h"
+#include "sim/judge/play.h"
+#include "sim/scenario/scenario.h"
 
 enum status { STATUS_RESOLVES, STATUS_FAILS, STATUS_UNDECIDED, STATUS_IMPOSSIBLE, STATUS_TOO_DEAR, STATUSES };
 const char *outcome_status_text(enum status status);
-
-struct interval {
-    double low, high;
-};
 
 /* One solution's intrinsic viscosity (m3/kg) or molar mass (kg/mol). */
 struct spread_of {
@@ -47,5 +45,19 @@ struct outcome {
     double polymer_kg;
     double margin_se;                           /* figure minus bar in standard errors at the cap; of two, the smaller */
 };
+
+/* What is nominal: the plan laid out and its cost by nominal times; status
+ * impossible or too dear where that already shows, else undecided. */
+void outcome_nominal(const struct scenario *s, const struct plan *plan, const struct design *design, struct outcome *out);
+
+/* Add what the studies played so far say of analysis number `a`: figures with
+ * standard errors, and the status of a look at n studies (decided by the rule
+ * of bar.h; undecided is left to the caller to be gone on with). `plan` may
+ * differ from the design's in what the bench does not see. False: out of
+ * memory. */
+bool outcome_of(const struct scenario *s, const struct plan *plan, const struct play *play, size_t a, struct outcome *out);
+
+/* Start a play for the question's fractions: expect, and against if asked. */
+void outcome_fractions(const struct question *q, struct play *play);
 
 #endif

@@ -28,6 +28,10 @@ LANES_WIDE void notebook_bring_to_set(const struct assumed *a, struct notebook_r
         FOR_LANES(l) run->at_set_s[l] = assumed_at_set(a, run->time_s[l], run->read_K[l]);
 }
 
+/* Spans that differ by less are a tie: times are read to 0.01 s or coarser, and
+ * their differences carry rounding. */
+static const double tie_s = 1e-9;
+
 static void sort(double *x, size_t n)
 {
     for (size_t i = 1; i < n; i++) {
@@ -48,7 +52,7 @@ double notebook_best(const struct notebook *book, size_t filling, int lane, doub
     size_t first = 0;
     double least = sorted[n - 1] - sorted[0];
     for (size_t i = 1; i + n <= made; i++)
-        if (sorted[i + n - 1] - sorted[i] < least) {
+        if (sorted[i + n - 1] - sorted[i] < least - tie_s) {
             least = sorted[i + n - 1] - sorted[i];
             first = i;
         }

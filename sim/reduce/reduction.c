@@ -66,8 +66,6 @@ static double single_point(size_t n, const double *conc, const double *relative)
 double reduction_extrapolate(const struct analysis *how, size_t n, const double *conc, const double *relative, struct line lines[2])
 {
     double weight[ASSUMED_MAX_LEVELS], y[2][ASSUMED_MAX_LEVELS];
-    for (size_t i = 0; i < n; i++)
-        if (!(relative[i] > 1.0)) return (double)NAN; /* no thicker than water: nothing to extrapolate */
     if (how->extrapolation == SINGLE_POINT) return single_point(n, conc, relative);
     const bool both = how->extrapolation == COMMON_INTERCEPT;
     for (size_t i = 0; i < n; i++) {
