@@ -101,6 +101,13 @@ LANES_WIDE static void wait_for(struct bench *b, const struct draws_filling *dra
     }
 }
 
+/* One run: its draws, the lanes in which it is made (1, else 0), and the
+ * liquid's mean temperature over it. */
+struct run {
+    double (*draws)[LANES];
+    double go[LANES], liquid_K[LANES];
+};
+
 /* The joint step of bath and liquid over one run and its reset. */
 static inline void run_step(const struct bath_step *s, const struct bench *b, double n[][LANES], double out[BATH_OUTPUTS][LANES])
 {
@@ -116,8 +123,10 @@ static inline void run_step(const struct bath_step *s, const struct bench *b, do
 
 /* Temperatures of one run: the liquid's mean, and what is read. The state goes
  * on to the start of the next run in the lanes that `go`. */
-LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f, double n[][LANES], const double go[LANES], double liquid_K[LANES], double read_K[LANES])
+LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f, struct run *r, double read_K[LANES])
 {
+    double(*const n)[LANES] = r->draws;
+    const double *const go = r->go;
     const struct plan *const p = b->design->plan;
     const struct design_liquid *const q = f->liquid;
     const double set_K = p->habits.temperature_K, lag_s = p->habits.lag_s, reading_u = p->thermometer.reading_u_K;
@@ -140,7 +149,7 @@ LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f,
     }
     const double resolution = p->thermometer.resolution_K; /* on a Celsius scale */
     if (resolution > 0.0) FOR_LANES(l) read[l] = 273.15 + rounded(read[l] - 273.15, resolution);
-    memcpy(liquid_K, liquid, sizeof liquid);
+    memcpy(r->liquid_K, liquid, sizeof liquid);
     memcpy(read_K, read, sizeof read);
 }
 
@@ -180,16 +189,15 @@ LANES_WIDE static void run_timing(const struct plan *p, double n[][LANES], doubl
     if (resolution > 0.0) FOR_LANES(l) time_s[l] = rounded(time_s[l], resolution);
 }
 
-/* Run number `run` of a filling, in the lanes that go. */
-static void make_run(struct bench *b, size_t filling, struct filled *f, struct draws_filling *draws, const double go[LANES], size_t run)
+/* Run number `number` of a filling, in the lanes that go. */
+static void make_run(struct bench *b, size_t filling, struct filled *f, struct run *r, size_t number)
 {
-    double liquid_K[LANES];
-    struct notebook_run *const entry = &notebook_runs(&b->book, filling)[run];
-    run_temperatures(b, f, draws->run[run], go, liquid_K, entry->read_K);
-    run_efflux(b, f, liquid_K, entry->time_s);
-    run_timing(b->design->plan, draws->run[run], entry->time_s);
+    struct notebook_run *const entry = &notebook_runs(&b->book, filling)[number];
+    run_temperatures(b, f, r, entry->read_K);
+    run_efflux(b, f, r->liquid_K, entry->time_s);
+    run_timing(b->design->plan, r->draws, entry->time_s);
     notebook_bring_to_set(&b->design->assumed, entry);
-    FOR_LANES(l) if (go[l] != 0.0) b->book.made[filling][l]++;
+    FOR_LANES(l) if (r->go[l] != 0.0) b->book.made[filling][l]++;
 }
 
 /* Spare runs in the lanes whose runs do not agree, while there are any left. */
@@ -200,17 +208,17 @@ static void make_spare_runs(struct bench *b, size_t filling, struct filled *f, s
     bool agreed[LANES];
     notebook_agree(&d->assumed, &b->book, filling, agreed);
     for (size_t r = planned; r < planned + d->plan->habits.spare_runs; r++) {
-        double go[LANES];
+        struct run spare = {.draws = draws->run[r]};
         bool any = false;
         FOR_LANES(l)
         {
-            go[l] = agreed[l] ? 0.0 : 1.0;
-            b->spare_runs[l] += go[l];
+            spare.go[l] = agreed[l] ? 0.0 : 1.0;
+            b->spare_runs[l] += spare.go[l];
             any = any || !agreed[l];
             if (!agreed[l]) draws_spare(draws, l, r);
         }
         if (!any) return;
-        make_run(b, filling, f, draws, go, r);
+        make_run(b, filling, f, &spare, r);
         FOR_LANES(l) agreed[l] = agreed[l] || notebook_agrees(&d->assumed, &b->book, filling, l);
     }
 }
@@ -218,13 +226,16 @@ static void make_spare_runs(struct bench *b, size_t filling, struct filled *f, s
 void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
 {
     struct filled f;
-    double go[LANES];
+    struct run run;
     if (b->started_s) memcpy(b->started_s[filling], b->clock_s, sizeof b->clock_s);
     pour(b, filling, &f);
     set_up(b, draws, &f);
     wait_for(b, draws, &f);
     memset(b->book.made[filling], 0, LANES);
-    FOR_LANES(l) go[l] = 1.0;
-    for (size_t r = 0; r < b->design->filling[filling].runs; r++) make_run(b, filling, &f, draws, go, r);
+    FOR_LANES(l) run.go[l] = 1.0;
+    for (size_t r = 0; r < b->design->filling[filling].runs; r++) {
+        run.draws = draws->run[r];
+        make_run(b, filling, &f, &run, r);
+    }
     make_spare_runs(b, filling, &f, draws);
 }

@@ -46,16 +46,24 @@ static bool make_room(struct play *p, size_t n)
     return true;
 }
 
-/* The studies of one block, from its slot into the samples; `which` names the
- * analyses that the job reduced. */
-static void collect(struct play *p, const struct study_job *job, const size_t which[], const void *slot, size_t at, size_t n)
+/* What is being played: the job, and which of the play's analyses it reduces. */
+struct playing {
+    struct study_job job;
+    struct analysis analysis[PLAY_MAX_ANALYSES];
+    size_t which[PLAY_MAX_ANALYSES];
+};
+
+/* The studies of one block, number `at` on and below n, from its slot into the
+ * samples. */
+static void collect(struct play *p, const struct playing *now, const void *slot, size_t at, size_t n)
 {
+    const struct study_job *const job = &now->job;
     const struct study_bench *const bench = study_bench_of(job, slot, 0);
     for (size_t l = 0; l < LANES && at + l < n; l++) {
         add(&p->clock_s, bench->clock_s[l]);
         add(&p->spare_runs, bench->spare_runs[l]);
         for (size_t a = 0; a < job->analyses; a++) {
-            struct play_sample *const s = &p->sample[which[a]];
+            struct play_sample *const s = &p->sample[now->which[a]];
             for (size_t f = 0; f < job->fractions; f++) s->delta[f][at + l] = study_result_of(job, slot, f, a)->delta[l];
             const struct reduction_result *const r = study_result_of(job, slot, 0, a);
             for (size_t k = 0; k < SERIES; k++) {
@@ -66,28 +74,30 @@ static void collect(struct play *p, const struct study_job *job, const size_t wh
     }
 }
 
+static void choose(const struct play *p, struct playing *now)
+{
+    now->job = (struct study_job){.design = p->design, .seed = p->seed, .fractions = p->fractions, .analysis = now->analysis};
+    memcpy(now->job.fraction, p->fraction, sizeof p->fraction);
+    for (size_t a = 0; a < p->analyses; a++) {
+        if (!p->active[a]) continue;
+        now->analysis[now->job.analyses] = p->analysis[a];
+        now->which[now->job.analyses++] = a;
+    }
+}
+
 bool play_until(struct play *p, size_t n)
 {
-    struct analysis chosen[PLAY_MAX_ANALYSES];
-    size_t which[PLAY_MAX_ANALYSES];
-    struct study_job job = {.design = p->design, .seed = p->seed, .fractions = p->fractions, .analysis = chosen};
-    memcpy(job.fraction, p->fraction, sizeof job.fraction);
-    for (size_t a = 0; a < p->analyses; a++)
-        if (p->active[a]) {
-            chosen[job.analyses] = p->analysis[a];
-            which[job.analyses++] = a;
-        }
+    struct playing now;
+    choose(p, &now);
     if (n <= p->n || !make_room(p, n)) return n <= p->n;
-    const struct spread_size size = {study_slot_size(&job), study_scratch_size(&job)};
-    const size_t last = (n + LANES - 1) / LANES;
-    const size_t at_once = PLAY_SLOT_BYTES / size.slot + 1;
+    const struct spread_size size = {study_slot_size(&now.job), study_scratch_size(&now.job)};
+    const size_t last = (n + LANES - 1) / LANES, at_once = PLAY_SLOT_BYTES / size.slot + 1;
     unsigned char *const slots = malloc((at_once < last ? at_once : last) * size.slot);
-    if (!slots) return false;
-    bool ok = true;
+    bool ok = slots != NULL;
     for (size_t block = p->n / LANES; ok && block < last; block += at_once) {
         const size_t count = last - block < at_once ? last - block : at_once;
-        ok = spread((struct spread_range){p->first_block + block, count}, study_play, &job, slots, size);
-        for (size_t i = 0; ok && i < count; i++) collect(p, &job, which, slots + i * size.slot, (block + i) * LANES, n);
+        ok = spread((struct spread_range){p->first_block + block, count}, study_play, &now.job, slots, size);
+        for (size_t i = 0; ok && i < count; i++) collect(p, &now, slots + i * size.slot, (block + i) * LANES, n);
     }
     free(slots);
     if (ok) p->n = n;

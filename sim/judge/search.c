@@ -225,7 +225,7 @@ static bool choices(struct search *x)
         const double cost = cost_compared(x->s, outcome_at(x, i));
         for (size_t k = 0, at = 0; k < keys; at += scenario_options(x->s, k++)) {
             long *const c = &choice[at + scenario_option_of(x->s, i, k)];
-            const double other = *c == SEARCH_NONE ? INFINITY : cost_compared(x->s, outcome_at(x, (size_t)*c));
+            const double other = *c == SEARCH_NONE ? (double)INFINITY : cost_compared(x->s, outcome_at(x, (size_t)*c));
             if (cost < other || (cost == other && (long)i == x->r->recommended)) *c = (long)i;
         }
     }

@@ -102,15 +102,15 @@ static bool play_with_progress(struct play *p, size_t cap, const struct trial_op
     return ok;
 }
 
-static bool play_plan(const struct scenario *s, const struct plan *plan, const struct trial_options *options, const struct design *design,
-                      struct outcome *out, struct estimates *estimates)
+static bool play_plan(const struct scenario *s, const struct design *design, const struct trial_options *options, struct outcome *out,
+                      struct estimates *estimates)
 {
     struct play p;
     play_start(&p, design, scenario_seed(s));
     p.first_block = options->first_study / LANES;
     outcome_fractions(scenario_question(s), &p);
-    one_analysis(&p, &plan->analysis);
-    bool ok = play_with_progress(&p, scenario_studies(s), options) && outcome_of(s, plan, &p, 0, out);
+    one_analysis(&p, &design->plan->analysis);
+    bool ok = play_with_progress(&p, scenario_studies(s), options) && outcome_of(s, design->plan, &p, 0, out);
     if (ok && options->deep) ok = look_deeper(s, &p, out);
     if (ok && estimates) {
         *estimates = (struct estimates){p.n, p.sample[0].delta[0], p.sample[0].delta[1]};
@@ -127,7 +127,7 @@ bool trial_run(const struct scenario *s, const struct plan *plan, struct trial_o
     bool ok = design_make(&design, plan, scenario_cost(s), scenario_question(s)->expect);
     if (ok) {
         outcome_nominal(s, plan, &design, out);
-        if (out->status == STATUS_UNDECIDED) ok = play_plan(s, plan, &options, &design, out, estimates);
+        if (out->status == STATUS_UNDECIDED) ok = play_plan(s, &design, &options, out, estimates);
     }
     design_free(&design);
     return ok;

@@ -27,6 +27,14 @@ struct scenario_request {
 struct scenario *scenario_read(const struct scenario_request *request, struct complaints *out);
 void scenario_free(struct scenario *s);
 
+/* What there is without any scenario: the built-in kit, for listing it only
+ * (scenario_kit). NULL after a complaint. */
+struct scenario *scenario_built_in(struct complaints *out);
+
+/* Every entry one can choose from, see sim/scenario/parts.h. */
+struct kit;
+const struct kit *scenario_kit(const struct scenario *s);
+
 const char *scenario_name(const struct scenario *s); /* file name without folder and ending */
 const char *scenario_title(const struct scenario *s); /* "" when none is given */
 const struct question *scenario_question(const struct scenario *s);

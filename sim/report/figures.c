@@ -1,0 +1,17 @@
+#include "sim/report/figures.h"
+
+bool figures_draw(struct figures_pen *pen, const char *name, const char *script, struct files_text *csv,
+                  struct files_text *variables)
+{
+    char file[64];
+    snprintf(file, sizeof file, "%s.csv", name);
+    const bool known = files_text_close(variables);
+    const bool written = files_text_save(csv, pen->folder, file, &pen->failure) && known;
+    if (written && pen->drawn == GNUPLOT_DRAWN) {
+        const struct gnuplot_figure figure = {
+            .folder = pen->folder, .name = name, .script = script, .variables = variables->bytes};
+        pen->drawn = gnuplot_draw(&figure, &pen->failure);
+    }
+    files_text_free(variables);
+    return written;
+}

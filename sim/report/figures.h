@@ -1,0 +1,21 @@
+/* A figure: a CSV, and SVG and PDF that draw it. */
+#ifndef VICINAL_REPORT_FIGURES_H
+#define VICINAL_REPORT_FIGURES_H
+
+#include "sim/base/files.h"
+#include "sim/report/gnuplot.h"
+
+/* Draws one after the other; after the first that finds no gnuplot only the
+ * CSV files are written. */
+struct figures_pen {
+    const char *folder;
+    enum gnuplot_result drawn;    /* GNUPLOT_DRAWN to begin with; the worst so far */
+    struct files_failure failure; /* of a CSV that could not be written, or of gnuplot */
+};
+
+/* One figure: the CSV's text and the variables' text, both still open, are
+ * closed and freed. False: a file could not be written. */
+bool figures_draw(struct figures_pen *pen, const char *name, const char *script, struct files_text *csv,
+                  struct files_text *variables);
+
+#endif

@@ -1,0 +1,21 @@
+/* Every combination of the options of `plan:`, and each as a compiled plan. */
+#ifndef VICINAL_SCENARIO_CANDIDATES_H
+#define VICINAL_SCENARIO_CANDIDATES_H
+
+#include "sim/scenario/parts.h"
+
+/* More combinations than this are refused. */
+#define CANDIDATES_MAX 1000000000u
+
+/* How many there are: the key listed first varies slowest, and single-point
+ * is counted once over `weighting`. 0: more than CANDIDATES_MAX, or a key
+ * without option. */
+size_t candidates_count(const struct scenario *s);
+
+/* Which option of every key candidate `index` takes. */
+void candidates_options(const struct scenario *s, size_t index, size_t option[PARTS_PLAN_KEYS]);
+
+/* Candidate `index`, in SI units. */
+void candidates_plan(const struct scenario *s, size_t index, struct plan *out);
+
+#endif
