@@ -122,6 +122,10 @@ def load(resolved):
     for key in ("against", "within"):
         if not isinstance(getattr(s.question, key, None), float):
             setattr(s.question, key, None)
+    # a grade's own degree of hydrolysis holds where `polymer` gives none
+    for key in ("hydrolysis", "hydrolysis_u"):
+        if not hasattr(s.polymer, key):
+            setattr(s.polymer, key, getattr(s.grade, key))
     if s.question.against_is == "same-constants":
         s.polymer.eta_u = s.polymer.a_u = 0.0
 
@@ -511,9 +515,13 @@ def plan_flasks(s, p):
     }
     for_level = {series: n * (s.tube.charge + s.bench.rinse) for series, n in s.plan.fillings_of.items()}
     solutions = s.solutions
-    p.level_volume, p.level_flask_u = choose_flask(
-        solutions.level_volume, solutions.level_tolerance, solutions.glass, max(for_level.values())
-    )
+    # one size of flask for all levels that are diluted; none where a series is its stock alone
+    holds = [for_level[series] for series in p.conc if p.diluted[series].any()]
+    p.level_volume, p.level_flask_u = (0.0, 0.0)
+    if holds:
+        p.level_volume, p.level_flask_u = choose_flask(
+            solutions.level_volume, solutions.level_tolerance, solutions.glass, max(holds)
+        )
     p.delivered = {series: p.level_volume * conc / c_top[series] for series, conc in p.conc.items()}
     needed = {
         series: float(np.sum(np.where(p.diluted[series], p.delivered[series], for_level[series])))
