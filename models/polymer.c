@@ -68,22 +68,25 @@ double polymer_xv_of_xn(const struct polymer_sums *sums, double xn)
     return pow(q * q * polymer_phi(sums, 1.0 - q, q), 1.0 / sums->a);
 }
 
-/* 1/xv is nearly r/xn, so that a secant on it settles in a few steps: once a
- * step is below 1e-9 of the root, the next would be below rounding. */
+double polymer_power_less_one(double ratio, double b)
+{
+    const double x = ratio - 1.0;
+    if (fabs(x) > 1e-3) return pow(ratio, b) - 1.0;
+    return b * x * (1.0 + (b - 1.0) / 2.0 * x * (1.0 + (b - 2.0) / 3.0 * x * (1.0 + (b - 3.0) / 4.0 * x * (1.0 + (b - 4.0) / 5.0 * x))));
+}
+
+/* xv = r (1/q - 1/2) + O(q), q = 1/xn, gives the start and the slope; each step
+ * then gains a factor of about q^2; the last is one after which less than
+ * 1e-13 is left. */
 double polymer_xn_of_xv(const struct polymer_sums *sums, double xv)
 {
-    const double target = 1.0 / xv;
-    double q0 = fmin(target / sums->r, 1.0), g0 = 1.0 / polymer_xv_of_xn(sums, 1.0 / q0) - target;
-    double q1 = q0 - g0 / sums->r;
-    for (int i = 0; i < 60 && q1 != q0; i++) {
-        q1 = fmin(q1, 1.0);
-        const double g1 = 1.0 / polymer_xv_of_xn(sums, 1.0 / q1) - target;
-        if (g1 == g0) break;
-        const double step = g1 * (q1 - q0) / (g1 - g0);
-        q0 = q1;
-        g0 = g1;
-        q1 -= step;
-        if (fabs(step) <= 1e-9 * q1) break;
+    const double target = pow(xv, sums->a);
+    double q = fmin(1.0 / (xv / sums->r + 0.5), 1.0);
+    for (int i = 0; i < 100; i++) {
+        const double at = q * q * polymer_phi(sums, 1.0 - q, q);
+        const double step = q * (1.0 - 0.5 * q) * polymer_power_less_one(at / target, -1.0 / sums->a);
+        q = fmin(q - step, 1.0);
+        if (fabs(step) * q <= 1e-13) break;
     }
-    return 1.0 / q1;
+    return 1.0 / q;
 }

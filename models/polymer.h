@@ -36,6 +36,10 @@ void polymer_sums_make(struct polymer_sums *sums, double a);
  * `one_minus_w` is given apart so that nothing cancels. Relative 1e-13. */
 double polymer_phi(const struct polymer_sums *sums, double w, double one_minus_w);
 
+/* ratio^b - 1 for a ratio near 1, without loss: by the binomial series within
+ * 1e-3 of 1 (relative 1e-15), else as it stands. */
+double polymer_power_less_one(double ratio, double b);
+
 /* Viscosity average in units, xv, of a most-probable distribution whose number
  * average is xn >= 1, and the xn of an xv >= 1 (to rounding). */
 double polymer_xv_of_xn(const struct polymer_sums *sums, double xn);

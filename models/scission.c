@@ -36,7 +36,8 @@ struct scission_chains scission_cut(enum scission_neighbours neighbours, double 
     return chains;
 }
 
-double scission_xv(const struct polymer_sums *sums, const struct scission_chains *chains)
+/* xv^a: not a number when no distribution belongs to the cut. */
+static double power_sum(const struct polymer_sums *sums, const struct scission_chains *chains)
 {
     double sum = 0.0;
     for (int i = 0; i < 2; i++) {
@@ -45,7 +46,12 @@ double scission_xv(const struct polymer_sums *sums, const struct scission_chains
         if (!(d > 0.0 && d < 2.0)) return (double)NAN;
         sum += chains->share[i] * d * d * polymer_phi(sums, chains->w[i], d);
     }
-    return pow(sum, 1.0 / sums->a);
+    return sum;
+}
+
+double scission_xv(const struct polymer_sums *sums, const struct scission_chains *chains)
+{
+    return pow(power_sum(sums, chains), 1.0 / sums->a);
 }
 
 double scission_xn(const struct scission_chains *chains)
@@ -63,23 +69,35 @@ double scission_xw(const struct scission_chains *chains)
     return sum;
 }
 
+/* The fraction at which chains of xn, cut, have the leading root that chains of
+ * xn_cut would have if they were most-probable: exact for independent
+ * neighbours, close to it for excluded ones. */
+static double first_guess(enum scission_neighbours neighbours, double c, double xn, double xn_cut)
+{
+    const double q = 1.0 / xn, root = (1.0 / xn_cut - q) / (1.0 - q);
+    if (neighbours == NEIGHBOURS_INDEPENDENT) return root / c;
+    const double u = root / (c - root * (1.0 - c));
+    return u / (1.0 + u);
+}
+
 double scission_fraction(enum scission_neighbours neighbours, double head_to_head_chance, const struct polymer_sums *sums, double xv, double xv_cut)
 {
     const struct scission_chance chance = {head_to_head_chance, 0.0};
     if (!(xv_cut >= 1.0 && xv >= 1.0)) return (double)NAN;
-    const double xn = polymer_xn_of_xv(sums, xv), target = 1.0 / xv_cut;
-    /* at fraction 0 nothing is cut */
-    double d0 = 0.0, g0 = 1.0 / xv - target;
-    double d1 = -g0 / (head_to_head_chance * sums->r);
+    const double xn = polymer_xn_of_xv(sums, xv), target = pow(xv_cut, sums->a);
+    /* g is the deviation of 1/xv over its target; at fraction 0 nothing is cut */
+    double d0 = 0.0, g0 = xv_cut / xv - 1.0;
+    double d1 = first_guess(neighbours, head_to_head_chance, xn, polymer_xn_of_xv(sums, xv_cut));
+    if (!(d1 > -1.0)) return (double)NAN;
     for (int i = 0; i < 60 && d1 != d0; i++) {
         d1 = fmin(d1, 0.5);
         const struct scission_chains chains = scission_cut(neighbours, d1, chance, xn);
-        const double inverse = 1.0 / scission_xv(sums, &chains);
-        if (!(inverse > 0.0)) { /* past the longest chains: halve the way */
+        const double at = power_sum(sums, &chains);
+        if (!(at > 0.0)) { /* past the longest chains: halve the way */
             d1 = 0.5 * (d0 + d1);
             continue;
         }
-        const double g1 = inverse - target;
+        const double g1 = polymer_power_less_one(at / target, -1.0 / sums->a);
         if (d1 == 0.5 && g1 < 0.0) return (double)NAN;
         if (g1 == g0) break;
         const double step = g1 * (d1 - d0) / (g1 - g0);

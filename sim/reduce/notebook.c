@@ -95,16 +95,12 @@ void notebook_filling_time(const struct assumed *a, const struct notebook *book,
 {
     const size_t n = book->layout->filling[filling].runs;
     const struct notebook_run *const run = notebook_runs(book, filling);
-    bool plain = a->combine == COMBINE_MEAN;
-    FOR_LANES(l) plain = plain && book->made[filling][l] == n;
-    if (plain) { /* no spare run in any lane: nothing to choose */
-        double sum[LANES] = {0};
-        for (size_t i = 0; i < n; i++) FOR_LANES(l) sum[l] += run[i].at_set_s[l];
-        FOR_LANES(l) out_s[l] = sum[l] / (double)n;
-        return;
-    }
+    double sum[LANES] = {0};
+    for (size_t i = 0; i < n; i++) FOR_LANES(l) sum[l] += run[i].at_set_s[l];
+    FOR_LANES(l) out_s[l] = sum[l] / (double)n;
     FOR_LANES(l)
     {
+        if (a->combine == COMBINE_MEAN && book->made[filling][l] == n) continue; /* nothing to choose */
         double best[NOTEBOOK_MAX_RUNS];
         notebook_best(book, filling, l, best);
         out_s[l] = a->combine == COMBINE_MEAN ? mean(best, n) : 0.5 * (best[(n - 1) / 2] + best[n / 2]);

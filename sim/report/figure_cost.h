@@ -7,8 +7,8 @@
 
 /* Cost of all plans that were played, in what the cheapest is least in,
  * against power, or against the share within where only that is asked
- * (cost.csv); nothing where no plan was played. Where both are asked the share has its own (share.csv). False: a
- * file could not be written. */
+ * (cost.csv). Where both are asked the share has its own (share.csv). Nothing
+ * where no plan was played. False: a file could not be written. */
 bool figure_cost(struct figures_pen *pen, const struct scenario *scenario, const struct search_result *search);
 
 #endif

@@ -31,32 +31,40 @@ static void resolved(const struct page *page, const struct report_context *conte
 /* What the nearest miss could be asked instead, rounded to the safe side. */
 static void wider_question(const struct page *page, const struct question *q, const struct outcome *o)
 {
+    char text[120];
     if (q->has_against && isfinite(o->resolvable_against)) {
         const bool more = q->expect > q->against;
         const double points = say_percent(o->resolvable_against) * 100.0;
         const double safe = (more ? floor(points) : ceil(points)) / 100.0;
-        page_item(page, "", "* ask the wider question: against %.2f %% (question.against)", safe);
+        snprintf(text, sizeof text, "ask the wider question (question.against: %.2f %%)", safe);
+        if (safe > 0.0)
+            page_point(page, text);
     }
     if (q->has_within && isfinite(o->resolvable_within)) {
         const double safe = ceil(say_percent(o->resolvable_within) * 100.0) / 100.0;
-        page_item(page, "", "* ask the wider question: within %.2f points (question.within)", safe);
+        snprintf(text, sizeof text, "ask the wider question (question.within: %.2f %%)", safe);
+        page_point(page, text);
     }
 }
 
 static void way_out(const struct page *page, const struct question *q, const struct search_result *r)
 {
+    const bool constants = r->constants_are_limit || (q->has_within && r->within_too_narrow);
+    const bool bench = !r->constants_are_limit;
+    const char *limit = "The bench is the limit: even with K and a known exactly this plan would not resolve.";
+    if (!bench)
+        limit = "The constants are the limit, not the bench: with K and a known exactly this plan would resolve.";
+    else if (constants)
+        limit = "Both are the limit: the uncertainty of K and a alone is too wide, and even with K and a known exactly "
+                "this plan would not resolve.";
     page_blank(page);
-    if (r->constants_are_limit)
-        page_say(page, PAGE_BOLD,
-                 "The constants are the limit, not the bench: with K and a known exactly this plan would resolve.");
-    else
-        page_say(page, PAGE_BOLD,
-                 "The bench is the limit: even with K and a known exactly this plan would not resolve.");
-    page_item(page, "way out:", "%s",
-              r->constants_are_limit
-                  ? "* compare with a fraction found with the same K and a (question.against_is: same-constants), "
-                    "whose uncertainty cancels then"
-                  : "* offer more replicates, a steadier bath, a finer thermometer or another tube");
+    page_say(page, PAGE_BOLD, "%s", limit);
+    page_say(page, PAGE_PLAIN, "Ways out:");
+    if (constants)
+        page_point(page, "compare with a fraction found with the same K and a, whose uncertainty cancels then "
+                         "(question.against_is: same-constants)");
+    if (bench)
+        page_point(page, "offer more replicates, a steadier bath, a finer thermometer or another tube");
     wider_question(page, q, &r->nearest);
 }
 

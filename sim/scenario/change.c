@@ -97,7 +97,7 @@ static struct document_node *change_step(const struct change *c, struct document
     if (!*key) complain_at(c->out, c->place, "an empty key in the path");
     else if (entries) return change_entry(c, node, key);
     else if (node->kind == DOCUMENT_MAP) return change_child(c, node, key);
-    else complain_at(c->out, c->place, "`%s` is asked for inside %s", text_shown(shown, key), document_kind_text(node->kind));
+    else complain_at(c->out, c->place, "`%s` is asked for inside %s%s", text_shown(shown, key), document_kind_text(node->kind), node->kind == DOCUMENT_LIST ? ", which is set as a whole, such as plan.fillings=[1, 2]" : "");
     return NULL;
 }
 

@@ -237,7 +237,7 @@ struct document_node *document_parse(struct arena *a, const struct document_inpu
     yaml_parser_set_input_string(&r.parser, (const unsigned char *)input->bytes + mark, input->size - mark);
     struct document_node *root = document_stream(&r);
     yaml_parser_delete(&r.parser);
-    if (!root && !r.failed) complain_at(out, input->place, "there is nothing in it");
+    if (!root && !r.failed) complain_at(out, input->place, input->place.file ? "there is nothing in it" : "no value is given");
     return root;
 }
 

@@ -37,10 +37,10 @@ static bool value_refuse_later(const struct reading *r, const struct value *v, c
 static bool value_check_range(const struct reading *r, const struct value *v, const struct keys_row *row)
 {
     const double min = units_si(r->units, row->dimension, row->unit, row->min), max = units_si(r->units, row->dimension, row->unit, row->max);
-    const double slack = 1e-12 * (fabs(max) + fabs(min));
-    if (!isfinite(slack)) complain_memory(r->out); /* the table's own units are good */
-    const bool above = row->flags & KEYS_ABOVE_MIN ? v->number > min + slack : v->number >= min - slack;
-    if (above && v->number <= max + slack) return true;
+    const double least = min - 1e-12 * fabs(min), most = max + 1e-12 * fabs(max);
+    if (!isfinite(least) || !isfinite(most)) complain_memory(r->out); /* the table's own units are good */
+    const bool above = row->flags & KEYS_ABOVE_MIN ? v->number > 2.0 * min - least : v->number >= least;
+    if (above && v->number <= most) return true;
     if (above && row->later_max > row->max && v->number <= row->later_max) return value_refuse_later(r, v, row);
     return value_refuse_range(r, v, row);
 }
@@ -65,8 +65,8 @@ static bool value_read_choice(const struct reading *r, struct value *v, const st
     struct text_nearest nearest = {.word = v->text};
     for (const struct keys_word *w = row->words; w->word; w++)
         if (!w->later) text_nearest_try(&nearest, w->word);
-    complain_at(r->out, v->place, "`%s` has no option `%s`%s%s%s; it is %s", row->key, text_shown(shown, v->text),
-                nearest.best ? "; did you mean `" : "", nearest.best ? nearest.best : "", nearest.best ? "`?" : "", keys_words(row, words));
+    complain_at(r->out, v->place, "`%s` has no option `%s`; it is %s%s%s%s", row->key, text_shown(shown, v->text), keys_words(row, words),
+                nearest.best ? ": did you mean `" : "", nearest.best ? nearest.best : "", nearest.best ? "`?" : "");
     return false;
 }
 
