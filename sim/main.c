@@ -91,7 +91,7 @@ static bool own_set(struct usage *u, int which, const char *option, const char *
 {
     static const char *const key[2] = {"run.seed", "run.studies"};
     unsigned long long value = 0;
-    if (!whole(option, text, which == 0 ? 0 : 16, which == 0 ? 18446744073709551615ULL : 1000000, &value)) return false;
+    if (!whole(option, text, which == 0 ? 0 : 16, which == 0 ? 9007199254740992ULL : 1000000ULL, &value)) return false;
     free(u->own[which]);
     u->own[which] = malloc(64);
     if (!u->own[which]) return wrong(option, "out of memory");

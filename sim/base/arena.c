@@ -24,7 +24,8 @@ struct arena *arena_new(void)
 
 void arena_free(struct arena *a)
 {
-    if (!a) return;
+    if (!a)
+        return;
     for (struct arena_block *b = a->blocks, *next; b; b = next) {
         next = b->next;
         free(b);
@@ -35,11 +36,14 @@ void arena_free(struct arena *a)
 static struct arena_block *arena_block_with(struct arena *a, size_t size)
 {
     struct arena_block *b = a->blocks;
-    if (b && b->size - b->used >= size) return b;
+    if (b && b->size - b->used >= size)
+        return b;
     const size_t room = size > ARENA_BLOCK ? size : ARENA_BLOCK;
-    if (room > SIZE_MAX - sizeof *b) return NULL;
+    if (room > SIZE_MAX - sizeof *b)
+        return NULL;
     b = calloc(1, sizeof *b + room);
-    if (!b) return NULL;
+    if (!b)
+        return NULL;
     b->size = room;
     b->next = a->blocks;
     a->blocks = b;
@@ -48,10 +52,12 @@ static struct arena_block *arena_block_with(struct arena *a, size_t size)
 
 void *arena_take(struct arena *a, size_t count, size_t size)
 {
-    if (size && count > (SIZE_MAX - alignof(max_align_t)) / size) return NULL;
+    if (size && count > (SIZE_MAX - alignof(max_align_t)) / size)
+        return NULL;
     const size_t step = alignof(max_align_t), need = (count * size + step - 1) / step * step;
     struct arena_block *b = arena_block_with(a, need ? need : step);
-    if (!b) return NULL;
+    if (!b)
+        return NULL;
     void *piece = b->bytes + b->used;
     b->used += need ? need : step;
     return piece;
@@ -60,6 +66,7 @@ void *arena_take(struct arena *a, size_t count, size_t size)
 char *arena_copy(struct arena *a, const char *bytes, size_t size)
 {
     char *copy = arena_take(a, size + 1, 1);
-    if (copy && size) memcpy(copy, bytes, size);
+    if (copy && size)
+        memcpy(copy, bytes, size);
     return copy;
 }

@@ -8,7 +8,7 @@
 #include "sim/base/text.h"
 
 struct complaint {
-    size_t file;  /* in the order in which files were first named; 0 the command line */
+    size_t file; /* in the order in which files were first named; 0 the command line */
     size_t line, column, order;
     char *text;
 };
@@ -30,10 +30,13 @@ struct complaints *complain_new(void)
 
 void complain_free(struct complaints *c)
 {
-    if (!c) return;
-    for (size_t i = 0; i < c->count; i++) free(c->list[i].text);
+    if (!c)
+        return;
+    for (size_t i = 0; i < c->count; i++)
+        free(c->list[i].text);
     free(c->list);
-    for (size_t i = 0; i < c->files_count; i++) free(c->files[i]);
+    for (size_t i = 0; i < c->files_count; i++)
+        free(c->files[i]);
     free(c->files);
     free(c);
 }
@@ -41,24 +44,30 @@ void complain_free(struct complaints *c)
 /* The number of a file, from 1; 0 for none, or when memory ran out. */
 static size_t complain_file(struct complaints *c, const char *file)
 {
-    if (!file) return 0;
+    if (!file)
+        return 0;
     for (size_t i = 0; i < c->files_count; i++)
-        if (strcmp(c->files[i], file) == 0) return i + 1;
+        if (strcmp(c->files[i], file) == 0)
+            return i + 1;
     char **files = realloc(c->files, (c->files_count + 1) * sizeof *files);
-    if (!files) return 0;
+    if (!files)
+        return 0;
     c->files = files;
     files[c->files_count] = malloc(strlen(file) + 1);
-    if (!files[c->files_count]) return 0;
+    if (!files[c->files_count])
+        return 0;
     strcpy(files[c->files_count], file);
     return ++c->files_count;
 }
 
 static bool complain_reserve(struct complaints *c)
 {
-    if (c->count < c->room) return true;
+    if (c->count < c->room)
+        return true;
     const size_t room = 2 * c->room + 8;
     struct complaint *list = realloc(c->list, room * sizeof *list);
-    if (!list) return false;
+    if (!list)
+        return false;
     c->list = list;
     c->room = room;
     return true;
@@ -66,11 +75,16 @@ static bool complain_reserve(struct complaints *c)
 
 static void complain_place(struct text *t, struct place where)
 {
-    if (where.file) text_add_safe(t, where.file);
-    else if (where.option) text_add_safe(t, where.option);
-    else return;
-    if (where.line) text_add(t, ":%zu", where.line);
-    if (where.line && where.column) text_add(t, ":%zu", where.column);
+    if (where.file)
+        text_add_safe(t, where.file);
+    else if (where.option)
+        text_add_safe(t, where.option);
+    else
+        return;
+    if (where.line)
+        text_add(t, ":%zu", where.line);
+    if (where.line && where.column)
+        text_add(t, ":%zu", where.column);
     text_add(t, ": ");
 }
 
@@ -112,9 +126,12 @@ const char *complain_text(const struct complaints *c, size_t i)
 static int complain_compare(const void *a, const void *b)
 {
     const struct complaint *x = *(const struct complaint *const *)a, *y = *(const struct complaint *const *)b;
-    if (x->file != y->file) return x->file < y->file ? -1 : 1;
-    if (x->line != y->line) return x->line < y->line ? -1 : 1;
-    if (x->column != y->column) return x->column < y->column ? -1 : 1;
+    if (x->file != y->file)
+        return x->file < y->file ? -1 : 1;
+    if (x->line != y->line)
+        return x->line < y->line ? -1 : 1;
+    if (x->column != y->column)
+        return x->column < y->column ? -1 : 1;
     return x->order < y->order ? -1 : x->order > y->order;
 }
 
@@ -122,10 +139,13 @@ void complain_print(const struct complaints *c, FILE *to)
 {
     const struct complaint **sorted = malloc((c->count + 1) * sizeof *sorted);
     if (sorted) {
-        for (size_t i = 0; i < c->count; i++) sorted[i] = &c->list[i];
+        for (size_t i = 0; i < c->count; i++)
+            sorted[i] = &c->list[i];
         qsort(sorted, c->count, sizeof *sorted, complain_compare);
     }
-    if (c->failed) fprintf(to, "vicinal: %s\n", complain_no_memory);
-    for (size_t i = 0; i < c->count; i++) fprintf(to, "vicinal: %s\n", (sorted ? sorted[i] : &c->list[i])->text);
+    if (c->failed)
+        fprintf(to, "vicinal: %s\n", complain_no_memory);
+    for (size_t i = 0; i < c->count; i++)
+        fprintf(to, "vicinal: %s\n", (sorted ? sorted[i] : &c->list[i])->text);
     free(sorted);
 }

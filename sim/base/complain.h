@@ -23,6 +23,6 @@ void complain_at(struct complaints *c, struct place where, const char *format, .
 void complain_memory(struct complaints *c); /* "out of memory", said once; takes none */
 size_t complain_count(const struct complaints *c);
 const char *complain_text(const struct complaints *c, size_t i); /* without the program's name */
-void complain_print(const struct complaints *c, FILE *to); /* sorted by place, each "vicinal: ...\n" */
+void complain_print(const struct complaints *c, FILE *to);       /* sorted by place, each "vicinal: ...\n" */
 
 #endif

@@ -6,8 +6,10 @@
 
 static bool text_reserve(struct text *t, size_t more)
 {
-    if (t->failed) return false;
-    if (t->size + more < t->room) return true;
+    if (t->failed)
+        return false;
+    if (t->size + more < t->room)
+        return true;
     const size_t room = 2 * (t->size + more) + 64;
     char *bytes = realloc(t->bytes, room);
     if (!bytes) {
@@ -42,11 +44,17 @@ void text_add(struct text *t, const char *format, ...)
 size_t text_character(const char *s)
 {
     const unsigned char *u = (const unsigned char *)s;
-    if (u[0] == 0) return 0;
-    if (u[0] < 0x80) return 1;
-    const size_t size = u[0] >= 0xf0 && u[0] < 0xf5 ? 4 : u[0] >= 0xe0 && u[0] < 0xf0 ? 3 : u[0] >= 0xc2 && u[0] < 0xe0 ? 2 : 0;
+    if (u[0] == 0)
+        return 0;
+    if (u[0] < 0x80)
+        return 1;
+    const size_t size = u[0] >= 0xf0 && u[0] < 0xf5   ? 4
+                        : u[0] >= 0xe0 && u[0] < 0xf0 ? 3
+                        : u[0] >= 0xc2 && u[0] < 0xe0 ? 2
+                                                      : 0;
     for (size_t i = 1; i < size; i++)
-        if ((u[i] & 0xc0) != 0x80) return 0;
+        if ((u[i] & 0xc0) != 0x80)
+            return 0;
     return size;
 }
 
@@ -56,16 +64,20 @@ size_t text_character(const char *s)
 static bool text_is_control(const char *s, size_t size)
 {
     const unsigned char *u = (const unsigned char *)s;
-    if (size == 1) return u[0] < 0x20 || u[0] == 0x7f;
-    if (size == 2) return u[0] == 0xc2 && u[1] < 0xa0;
-    return size == 3 && u[0] == 0xe2 && ((u[1] == 0x80 && u[2] >= 0xa8 && u[2] <= 0xae) || (u[1] == 0x81 && u[2] >= 0xa6 && u[2] <= 0xa9));
+    if (size == 1)
+        return u[0] < 0x20 || u[0] == 0x7f;
+    if (size == 2)
+        return u[0] == 0xc2 && u[1] < 0xa0;
+    return size == 3 && u[0] == 0xe2 &&
+           ((u[1] == 0x80 && u[2] >= 0xa8 && u[2] <= 0xae) || (u[1] == 0x81 && u[2] >= 0xa6 && u[2] <= 0xa9));
 }
 
 bool text_is_clean(const char *s)
 {
     for (size_t size; *s; s += size) {
         size = text_character(s);
-        if (!size || text_is_control(s, size)) return false;
+        if (!size || text_is_control(s, size))
+            return false;
     }
     return true;
 }
@@ -75,9 +87,11 @@ void text_add_safe(struct text *t, const char *s)
     while (*s) {
         const size_t size = text_character(s);
         const size_t step = size ? size : 1;
-        if (size && !text_is_control(s, size)) text_add(t, "%.*s", (int)size, s);
+        if (size && !text_is_control(s, size))
+            text_add(t, "%.*s", (int)size, s);
         else
-            for (size_t i = 0; i < step; i++) text_add(t, "\\x%02x", (unsigned)(unsigned char)s[i]);
+            for (size_t i = 0; i < step; i++)
+                text_add(t, "\\x%02x", (unsigned)(unsigned char)s[i]);
         s += step;
     }
 }
@@ -87,7 +101,8 @@ const char *text_shown(char buffer[TEXT_SHOWN], const char *s)
     size_t size = 0;
     while (s[size]) {
         const size_t next = text_character(s + size);
-        if (size + (next ? next : 1) > TEXT_SHOWN - 4) break;
+        if (size + (next ? next : 1) > TEXT_SHOWN - 4)
+            break;
         size += next ? next : 1;
     }
     memcpy(buffer, s, size);
@@ -110,7 +125,8 @@ size_t text_distance(const char *a, const char *b)
     size_t rows[3][TEXT_WORD + 1];
     size_t *before = rows[0], *above = rows[1], *row = rows[2];
     const size_t length_a = text_least(strlen(a), TEXT_WORD), length_b = text_least(strlen(b), TEXT_WORD);
-    for (size_t j = 0; j <= length_b; j++) above[j] = j;
+    for (size_t j = 0; j <= length_b; j++)
+        above[j] = j;
     for (size_t i = 1; i <= length_a; i++) {
         row[0] = i;
         for (size_t j = 1; j <= length_b; j++) {
@@ -132,8 +148,10 @@ void text_nearest_try(struct text_nearest *n, const char *candidate)
     const size_t distance = text_distance(n->word, candidate);
     const size_t near = 1 + strlen(candidate) / 4;
     const bool begins = strlen(n->word) >= 3 && strncmp(n->word, candidate, strlen(n->word)) == 0;
-    if ((distance > near || distance >= strlen(candidate)) && !begins) return;
-    if (n->best && distance >= n->distance) return;
+    if ((distance > near || distance >= strlen(candidate)) && !begins)
+        return;
+    if (n->best && distance >= n->distance)
+        return;
     n->best = candidate;
     n->distance = distance;
 }

@@ -7,6 +7,9 @@
 #include "sim/judge/groups.h"
 #include "sim/judge/outcome.h"
 
+/* At most so many bench groups, spread over all, are tried for a possible one. */
+enum { FORECAST_TRIES = 50 };
+
 static double clock_s(void)
 {
     struct timespec now = {0, 0};
@@ -46,7 +49,8 @@ bool forecast_seconds(const struct scenario *s, double *seconds)
     double each = 0.0;
     if (!groups_make(s, &groups)) return false;
     bool ok = true;
-    for (size_t g = 0; ok && each == 0.0 && g < groups.count && g < 50; g++) ok = time_study(s, groups.member[groups.group[g].first], &each);
+    const size_t stride = groups.count / FORECAST_TRIES + 1;
+    for (size_t g = 0; ok && each == 0.0 && g < groups.count; g += stride) ok = time_study(s, groups.member[groups.group[g].first], &each);
     const double looks = 2.0 * (double)bar_first_look(scenario_question(s)), cap = (double)scenario_studies(s);
     const double count = (double)groups.count, deep = count < 12.0 ? count : 12.0;
     *seconds = each * (count * (looks < cap ? looks : cap) + deep * cap + 8.0 * cap);

@@ -147,6 +147,14 @@ static bool describe(const double *x, size_t n, struct outcome *out)
     return true;
 }
 
+/* Standard error of a share, taken at (k + 1)/(n + 2) so that none or all of n
+ * does not pass for certain (Laplace's rule of succession). */
+static double share_se(double p, size_t n)
+{
+    const double count = (double)n, at = (p * count + 1.0) / (count + 2.0);
+    return sqrt(at * (1.0 - at) / count);
+}
+
 /* Share of the estimates under `against` that a plain comparison with
  * `against` would call different: beyond z of their own standard deviations.
  * Its standard error allows for that deviation being estimated too. */
@@ -164,7 +172,7 @@ static void plain_false_alarm(const struct question *q, const double *x, size_t 
         sum += influence;
         sum2 += influence * influence;
     }
-    out->se.plain_false_alarm = sqrt(fmax(sum2 / count - sum * sum / (count * count), 0.0) / count);
+    out->se.plain_false_alarm = fmax(sqrt(fmax(sum2 / count - sum * sum / (count * count), 0.0) / count), share_se(0.0, all));
 }
 
 static size_t answered(const double *x, size_t n, double *kept)
@@ -173,11 +181,6 @@ static size_t answered(const double *x, size_t n, double *kept)
     for (size_t i = 0; i < n; i++)
         if (isfinite(x[i])) kept[count++] = x[i];
     return count;
-}
-
-static double share_se(double p, size_t n)
-{
-    return sqrt(p * (1.0 - p) / (double)n);
 }
 
 static bool decide(const struct scenario *s, const double *const delta[], size_t n, struct outcome *out)
@@ -195,7 +198,7 @@ static bool decide(const struct scenario *s, const double *const delta[], size_t
         out->at.critical = power.critical;
         out->se.critical = power.critical_se;
         out->at.power = power.power;
-        out->se.power = bar_power_se(q, &power, power.power, n);
+        out->se.power = fmax(bar_power_se(q, &power, power.power, n), share_se(power.power, n));
     }
     const struct bar_look look = bar_look(q, share, &power, n, scenario_studies(s));
     out->margin_se = look.margin_se;

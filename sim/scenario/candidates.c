@@ -15,34 +15,46 @@ static bool candidates_is_single_point(const struct value *extrapolation)
  * it are one digit, the pairs that differ. */
 static size_t candidates_radix(const struct scenario *s, size_t key)
 {
-    const struct choice *choice = &s->choices[key];
-    const size_t extrapolation = (size_t)(choices_find(s, "extrapolation") - s->choices);
-    if (key == extrapolation) return 1;
-    if (key != extrapolation + 1) return choice->count;
+    const struct choice *choice = &s->choices[key], *lines = &s->choices[s->extrapolation];
+    if (key == s->extrapolation)
+        return 1;
+    if (key != s->extrapolation + 1)
+        return choice->count;
     size_t pairs = 0;
-    for (size_t i = 0; i < s->choices[extrapolation].count; i++)
-        pairs += candidates_is_single_point(&s->choices[extrapolation].options[i]) ? choice->count > 0 : choice->count;
+    for (size_t i = 0; i < lines->count; i++)
+        pairs += candidates_is_single_point(&lines->options[i]) ? choice->count > 0 : choice->count;
     return pairs;
 }
 
-size_t candidates_count(const struct scenario *s)
+static size_t candidates_key(const struct scenario *s, const char *key)
 {
-    size_t count = 1;
-    for (size_t key = 0; key < s->keys; key++) {
-        const size_t radix = candidates_radix(s, key);
-        if (radix && count > CANDIDATES_MAX / radix) return 0;
-        count *= radix;
-    }
-    return count;
+    return (size_t)(choices_find(s, key) - s->choices);
 }
 
-static void candidates_split_pair(const struct scenario *s, size_t extrapolation, size_t pair, size_t option[PARTS_PLAN_KEYS])
+bool candidates_count(struct scenario *s)
 {
+    s->extrapolation = candidates_key(s, "extrapolation");
+    s->grade = candidates_key(s, "grade");
+    s->tube = candidates_key(s, "tube");
+    s->candidates = 1;
+    for (size_t key = 0; key < s->keys; key++) {
+        s->radix[key] = candidates_radix(s, key);
+        if (!s->radix[key] || s->candidates > CANDIDATES_MAX / s->radix[key])
+            return false;
+        s->candidates *= s->radix[key];
+    }
+    return true;
+}
+
+static void candidates_split_pair(const struct scenario *s, size_t pair, size_t option[PARTS_PLAN_KEYS])
+{
+    const size_t extrapolation = s->extrapolation;
     const struct choice *lines = &s->choices[extrapolation];
     size_t i = 0;
     for (; i + 1 < lines->count; i++) {
         const size_t width = candidates_is_single_point(&lines->options[i]) ? 1 : s->choices[extrapolation + 1].count;
-        if (pair < width) break;
+        if (pair < width)
+            break;
         pair -= width;
     }
     option[extrapolation] = i;
@@ -51,47 +63,56 @@ static void candidates_split_pair(const struct scenario *s, size_t extrapolation
 
 void candidates_options(const struct scenario *s, size_t index, size_t option[PARTS_PLAN_KEYS])
 {
-    const size_t extrapolation = (size_t)(choices_find(s, "extrapolation") - s->choices);
     for (size_t key = s->keys; key-- > 0;) {
-        const size_t radix = candidates_radix(s, key);
-        option[key] = index % radix;
-        index /= radix;
-        if (key == extrapolation) candidates_split_pair(s, extrapolation, option[key + 1], option);
+        option[key] = index % s->radix[key];
+        index /= s->radix[key];
     }
+    candidates_split_pair(s, option[s->extrapolation + 1], option);
 }
 
 static void candidates_entry(const struct keys_row *row, const struct record *entry, struct plan *out)
 {
     switch (keys_entry_kind(row)) {
-    case KEYS_GRADES: record_compile(entry, &out->grade), out->grade.name = entry->name; break;
-    case KEYS_TUBES: record_compile(entry, &out->tube), out->tube.name = entry->name; break;
-    case KEYS_BATHS: record_compile(entry, &out->bath), out->bath.name = entry->name; break;
-    case KEYS_THERMOMETERS: record_compile(entry, &out->thermometer), out->thermometer.name = entry->name; break;
-    case KEYS_TIMERS: record_compile(entry, &out->timer), out->timer.name = entry->name; break;
-    default: out->material.name = entry->name; break;
+    case KEYS_GRADES:
+        record_compile(entry, &out->grade), out->grade.name = entry->name;
+        break;
+    case KEYS_TUBES:
+        record_compile(entry, &out->tube), out->tube.name = entry->name;
+        break;
+    case KEYS_BATHS:
+        record_compile(entry, &out->bath), out->bath.name = entry->name;
+        break;
+    case KEYS_THERMOMETERS:
+        record_compile(entry, &out->thermometer), out->thermometer.name = entry->name;
+        break;
+    case KEYS_TIMERS:
+        record_compile(entry, &out->timer), out->timer.name = entry->name;
+        break;
+    default:
+        out->material.name = entry->name;
+        break;
     }
 }
 
 /* A grade's own hydrolysis wins over the material's, `polymer`'s over both. */
 static void candidates_hydrolysis(const struct record *polymer, const struct record *grade, struct material *out)
 {
-    if (record_is_good(grade, "hydrolysis") && !record_value(polymer, "hydrolysis")->own) out->hydrolysis = record_number(grade, "hydrolysis");
-    if (record_is_good(grade, "hydrolysis_u") && !record_value(polymer, "hydrolysis_u")->own) out->hydrolysis_u = record_number(grade, "hydrolysis_u");
+    if (record_is_good(grade, "hydrolysis") && !record_value(polymer, "hydrolysis")->own)
+        out->hydrolysis = record_number(grade, "hydrolysis");
+    if (record_is_good(grade, "hydrolysis_u") && !record_value(polymer, "hydrolysis_u")->own)
+        out->hydrolysis_u = record_number(grade, "hydrolysis_u");
 }
 
 static void candidates_kinetic(const struct record *entry, struct tube *tube)
 {
     const bool flared = tube->ends == TUBE_FLARED;
     const double given = record_number(entry, flared ? "E" : "B");
-    if (isfinite(given)) tube->kinetic = given;
-    else if (flared) tube->kinetic = tube_kinetic_flared(tube->bulb_volume_m3, tube->length_m, tube->bore_m, tube->constant_m2_s2);
-    else tube->kinetic = tube_kinetic_square(tube->bulb_volume_m3, tube->length_m);
-}
-
-static const struct value *candidates_value(const struct scenario *s, const size_t option[PARTS_PLAN_KEYS], const char *key)
-{
-    const struct choice *choice = choices_find(s, key);
-    return &choice->options[option[choice - s->choices]];
+    if (isfinite(given))
+        tube->kinetic = given;
+    else if (flared)
+        tube->kinetic = tube_kinetic_flared(tube->bulb_volume_m3, tube->length_m, tube->bore_m, tube->constant_m2_s2);
+    else
+        tube->kinetic = tube_kinetic_square(tube->bulb_volume_m3, tube->length_m);
 }
 
 void candidates_plan(const struct scenario *s, size_t index, struct plan *out)
@@ -106,12 +127,18 @@ void candidates_plan(const struct scenario *s, size_t index, struct plan *out)
     record_compile(s->sections[KEYS_BENCH], &out->habits);
     for (size_t key = 0; key < s->keys; key++) {
         const struct value *v = &s->choices[key].options[option[key]];
-        if (v->entry) candidates_entry(s->choices[key].row, v->entry, out);
-        else record_store(s->choices[key].row, v, out);
+        if (v->entry)
+            candidates_entry(s->choices[key].row, v->entry, out);
+        else
+            record_store(s->choices[key].row, v, out);
     }
-    if (!out->levels[CLEAVED]) out->levels[CLEAVED] = out->levels[INTACT];
-    if (!out->fillings[CLEAVED]) out->fillings[CLEAVED] = out->fillings[INTACT];
-    candidates_hydrolysis(s->sections[KEYS_POLYMER], candidates_value(s, option, "grade")->entry, &out->material);
-    candidates_kinetic(candidates_value(s, option, "tube")->entry, &out->tube);
-    if (s->question.against_is == AGAINST_SAME_CONSTANTS) out->material.eta_u = out->material.a_u = 0.0;
+    if (!out->levels[CLEAVED])
+        out->levels[CLEAVED] = out->levels[INTACT];
+    if (!out->fillings[CLEAVED])
+        out->fillings[CLEAVED] = out->fillings[INTACT];
+    candidates_hydrolysis(s->sections[KEYS_POLYMER], s->choices[s->grade].options[option[s->grade]].entry,
+                          &out->material);
+    candidates_kinetic(s->choices[s->tube].options[option[s->tube]].entry, &out->tube);
+    if (s->question.against_is == AGAINST_SAME_CONSTANTS)
+        out->material.eta_u = out->material.a_u = 0.0;
 }

@@ -7,10 +7,10 @@
 /* More combinations than this are refused. */
 #define CANDIDATES_MAX 1000000000u
 
-/* How many there are: the key listed first varies slowest, and single-point
- * is counted once over `weighting`. 0: more than CANDIDATES_MAX, or a key
- * without option. */
-size_t candidates_count(const struct scenario *s);
+/* Counts them: the key listed first varies slowest, and single-point is
+ * counted once over `weighting`. False: more than CANDIDATES_MAX, or a key
+ * without option. The others here come after it. */
+bool candidates_count(struct scenario *s);
 
 /* Which option of every key candidate `index` takes. */
 void candidates_options(const struct scenario *s, size_t index, size_t option[PARTS_PLAN_KEYS]);

@@ -23,7 +23,8 @@ const char *change_option(struct arena *a, const char *option, const char *text)
     const size_t size = value ? (size_t)(value - 1 - text) : strlen(text);
     const size_t before = strlen(option);
     char *whole = arena_take(a, before + size + 2, 1);
-    if (!whole) return NULL;
+    if (!whole)
+        return NULL;
     memcpy(whole, option, before);
     whole[before] = ' ';
     memcpy(whole + before + 1, text, size);
@@ -54,10 +55,12 @@ static bool change_is_named(const struct document_node *entry, const char *name)
 static struct document_node *change_entry(const struct change *c, struct document_node *list, const char *name)
 {
     for (struct document_node *n = list->children; n; n = n->next)
-        if (change_is_named(n, name)) return n;
+        if (change_is_named(n, name))
+            return n;
     struct document_node *entry = change_add(c, list, NULL);
     struct document_node *named = entry ? change_add(c, entry, "name") : NULL;
-    if (!named) return NULL;
+    if (!named)
+        return NULL;
     named->kind = DOCUMENT_TEXT;
     named->text = name;
     return entry;
@@ -89,15 +92,24 @@ static struct document_node *change_child(const struct change *c, struct documen
 
 /* One step down: what stands in `node` under a key or, in a list of the kit,
  * under a name. NULL: it was said why. */
-static struct document_node *change_step(const struct change *c, struct document_node *node, const char *key, bool entries)
+static struct document_node *change_step(const struct change *c, struct document_node *node, const char *key,
+                                         bool entries)
 {
     char shown[TEXT_SHOWN];
-    if (entries && node->kind != DOCUMENT_LIST && !change_list(c, node)) return NULL;
-    if (node->kind == DOCUMENT_TEXT && node->null) node->kind = DOCUMENT_MAP;
-    if (!*key) complain_at(c->out, c->place, "an empty key in the path");
-    else if (entries) return change_entry(c, node, key);
-    else if (node->kind == DOCUMENT_MAP) return change_child(c, node, key);
-    else complain_at(c->out, c->place, "`%s` is asked for inside %s%s", text_shown(shown, key), document_kind_text(node->kind), node->kind == DOCUMENT_LIST ? ", which is set as a whole, such as plan.fillings=[1, 2]" : "");
+    if (entries && node->kind != DOCUMENT_LIST && !change_list(c, node))
+        return NULL;
+    if (node->kind == DOCUMENT_TEXT && node->null)
+        node->kind = DOCUMENT_MAP;
+    if (!*key)
+        complain_at(c->out, c->place, "an empty key in the path");
+    else if (entries)
+        return change_entry(c, node, key);
+    else if (node->kind == DOCUMENT_MAP)
+        return change_child(c, node, key);
+    else
+        complain_at(c->out, c->place, "`%s` is asked for inside %s%s", text_shown(shown, key),
+                    document_kind_text(node->kind),
+                    node->kind == DOCUMENT_LIST ? ", which is set as a whole, such as plan.fillings=[1, 2]" : "");
     return NULL;
 }
 
@@ -108,7 +120,8 @@ static struct document_node *change_walk(const struct change *c, struct document
     struct document_node *node = root;
     for (size_t depth = 0; node && path; depth++) {
         char *rest = strchr(path, '.');
-        if (rest) *rest++ = 0;
+        if (rest)
+            *rest++ = 0;
         node = change_step(c, node, path, kit && depth == 2);
         path = rest;
     }
@@ -131,7 +144,8 @@ void change_set(struct arena *a, struct document_node *root, const char *set, st
     const struct document_input input = {value, strlen(value), c.place, DOCUMENT_SET};
     const struct document_node *given = document_parse(a, &input, out);
     struct document_node *node = given ? change_walk(&c, root, path) : NULL;
-    if (!node) return;
+    if (!node)
+        return;
     const struct document_node old = *node;
     *node = *given;
     node->key = old.key;

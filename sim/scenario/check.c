@@ -11,29 +11,44 @@
 
 static void check_question(const struct reading *r, const struct record *q)
 {
-    const struct value *expect = record_value(q, "expect"), *against = record_value(q, "against"), *within = record_value(q, "within");
-    if (q->bad) return;
-    if (expect->state == VALUE_ABSENT) complain_at(r->out, q->place, "question.expect is missing: the head-to-head fraction the polymer is thought to have, for example expect: 1.5 %%");
+    const struct value *expect = record_value(q, "expect"), *against = record_value(q, "against"),
+                       *within = record_value(q, "within");
+    if (q->bad)
+        return;
+    if (expect->state == VALUE_ABSENT)
+        complain_at(r->out, q->place,
+                    "question.expect is missing: the head-to-head fraction the polymer is thought to have, for example "
+                    "expect: 1.5 %%");
     if (against->state == VALUE_ABSENT && within->state == VALUE_ABSENT)
-        complain_at(r->out, q->place, "question.against and question.within are both missing: tell the fraction apart from which other, or come within what of the truth?");
-    if (fabs(expect->number - against->number) <= 1e-12) complain_at(r->out, against->place, "`against` and `expect` are the same fraction; there is nothing to tell apart");
+        complain_at(r->out, q->place,
+                    "question.against and question.within are both missing: tell the fraction apart from which other, "
+                    "or come within what of the truth?");
+    if (fabs(expect->number - against->number) <= 1e-12)
+        complain_at(r->out, against->place,
+                    "`against` and `expect` are the same fraction; there is nothing to tell apart");
 }
 
 /* One value must be below another; said where one of them is given. */
-static void check_below(const struct reading *r, const struct record *record, const char *low, const char *high, bool or_equal)
+static void check_below(const struct reading *r, const struct record *record, const char *low, const char *high,
+                        bool or_equal)
 {
     const struct value *x = record_value(record, low), *y = record_value(record, high);
     const bool broken = or_equal ? x->number > y->number : x->number >= y->number;
     if (broken && (x->own || y->own))
-        complain_at(r->out, y->own ? y->place : x->place, "`%s` is %s and `%s` is %s; the first must be %s the second", low, x->text, high, y->text, or_equal ? "at most" : "below");
+        complain_at(r->out, y->own ? y->place : x->place, "`%s` is %s and `%s` is %s; the first must be %s the second",
+                    low, x->text, high, y->text, or_equal ? "at most" : "below");
 }
 
 static void check_tube(const struct reading *r, const struct record *tube)
 {
     const struct value *E = record_value(tube, "E"), *B = record_value(tube, "B");
     const double ends = record_number(tube, "ends");
-    if (E->state == VALUE_GOOD && ends > TUBE_FLARED) complain_at(r->out, E->place, "`E` belongs to flared ends, and those of %s are square; give B, or neither", tube->name);
-    if (B->state == VALUE_GOOD && ends <= TUBE_FLARED) complain_at(r->out, B->place, "`B` belongs to square ends, and those of %s are flared; give E, or neither", tube->name);
+    if (E->state == VALUE_GOOD && ends > TUBE_FLARED)
+        complain_at(r->out, E->place, "`E` belongs to flared ends, and those of %s are square; give B, or neither",
+                    tube->name);
+    if (B->state == VALUE_GOOD && ends <= TUBE_FLARED)
+        complain_at(r->out, B->place, "`B` belongs to square ends, and those of %s are flared; give E, or neither",
+                    tube->name);
     check_below(r, tube, "charge", "capacity", true);
     check_below(r, tube, "offset", "head", false);
 }
@@ -41,39 +56,52 @@ static void check_tube(const struct reading *r, const struct record *tube)
 static void check_grade(const struct reading *r, const struct record *grade)
 {
     const struct value *d = record_value(grade, "dispersity");
-    if (d->state == VALUE_GOOD && fabs(d->number - 2.0) > 1e-9) complain_at(r->out, d->place, "`dispersity` is %s; most-probable chains have 2 and no other", d->text);
+    if (d->state == VALUE_GOOD && fabs(d->number - 2.0) > 1e-9)
+        complain_at(r->out, d->place, "`dispersity` is %s; most-probable chains have 2 and no other", d->text);
 }
 
 static void check_kit(const struct reading *r, const struct kit *kit)
 {
-    for (const struct record *e = kit->first[KEYS_TUBES]; e; e = e->next) check_tube(r, e);
-    for (const struct record *e = kit->first[KEYS_GRADES]; e; e = e->next) check_grade(r, e);
-    for (const struct record *e = kit->first[KEYS_MATERIALS]; e; e = e->next) check_below(r, e, "valid_from", "valid_to", false);
+    for (const struct record *e = kit->first[KEYS_TUBES]; e; e = e->next)
+        check_tube(r, e);
+    for (const struct record *e = kit->first[KEYS_GRADES]; e; e = e->next)
+        check_grade(r, e);
+    for (const struct record *e = kit->first[KEYS_MATERIALS]; e; e = e->next)
+        check_below(r, e, "valid_from", "valid_to", false);
 }
 
 /* A flask that is not made has no tolerance of its class. */
-static void check_flask(const struct reading *r, const struct record *solutions, const char *volume, const char *tolerance)
+static void check_flask(const struct reading *r, const struct record *solutions, const char *volume,
+                        const char *tolerance)
 {
     const struct value *v = record_value(solutions, volume);
     double by_class;
     const bool made = !(v->number > 0.0) || glassware_tolerance_of(v->number, GLASS_A, &by_class);
     if (!made && record_number(solutions, tolerance) < 0.0)
-        complain_at(r->out, v->own ? v->place : solutions->place, "`%s` is %s, which no one-mark flask has (10, 25, 50, 100, 200, 250, 500, 1000 mL); give `%s` too", volume, v->text, tolerance);
+        complain_at(r->out, v->own ? v->place : solutions->place,
+                    "`%s` is %s, which no one-mark flask has (10, 25, 50, 100, 200, 250, 500, 1000 mL); give `%s` too",
+                    volume, v->text, tolerance);
 }
 
 static bool check_any_above_one(const struct choice *levels)
 {
     for (size_t i = 0; i < levels->count; i++)
-        if (levels->options[i].number > 1.5) return true;
+        if (levels->options[i].number > 1.5)
+            return true;
     return false;
 }
 
 static void check_levels(const struct reading *r, const struct scenario *s)
 {
     const struct choice *lowest = choices_find(s, "lowest");
-    if (!check_any_above_one(choices_find(s, "levels")) && !check_any_above_one(choices_find(s, "levels_cleaved"))) return;
+    if (!check_any_above_one(choices_find(s, "levels")) && !check_any_above_one(choices_find(s, "levels_cleaved")))
+        return;
     for (size_t i = 0; i < lowest->count; i++)
-        if (lowest->options[i].number >= 1.0) complain_at(r->out, lowest->options[i].place, "`lowest` is %s, so that all levels have one concentration; it must be below 1 with more than one level", lowest->options[i].text);
+        if (lowest->options[i].number >= 1.0)
+            complain_at(r->out, lowest->options[i].place,
+                        "`lowest` is %s, so that all levels have one concentration; it must be below 1 with more than "
+                        "one level",
+                        lowest->options[i].text);
 }
 
 static void check_owned_name(const struct reading *r, const struct kit *kit, const struct document_node *n)
@@ -86,21 +114,30 @@ static void check_owned_name(const struct reading *r, const struct kit *kit, con
     }
     struct text_nearest nearest = {.word = n->text};
     for (size_t i = 0; i < sizeof kinds / sizeof *kinds; i++) {
-        if (kit_find(kit, kinds[i], n->text)) return;
-        for (const struct record *e = kit->first[kinds[i]]; e; e = e->next) text_nearest_try(&nearest, e->name);
+        if (kit_find(kit, kinds[i], n->text))
+            return;
+        for (const struct record *e = kit->first[kinds[i]]; e; e = e->next)
+            text_nearest_try(&nearest, e->name);
     }
     text_shown(shown, n->text);
-    if (nearest.best) complain_at(r->out, n->place, "`owned`: no tube, bath, thermometer or timer `%s`; did you mean `%s`?", shown, nearest.best);
-    else complain_at(r->out, n->place, "`owned`: no tube, bath, thermometer or timer `%s`; `vicinal kit` lists them", shown);
+    if (nearest.best)
+        complain_at(r->out, n->place, "`owned`: no tube, bath, thermometer or timer `%s`; did you mean `%s`?", shown,
+                    nearest.best);
+    else
+        complain_at(r->out, n->place, "`owned`: no tube, bath, thermometer or timer `%s`; `vicinal kit` lists them",
+                    shown);
 }
 
 static void check_owned(const struct reading *r, const struct scenario *s)
 {
     const struct document_node *given = record_value(s->sections[KEYS_COST], "owned")->node;
-    if (!given || (given->kind == DOCUMENT_TEXT && given->null)) return;
-    if (given->kind != DOCUMENT_LIST) check_owned_name(r, &s->kit, given);
+    if (!given || (given->kind == DOCUMENT_TEXT && given->null))
+        return;
+    if (given->kind != DOCUMENT_LIST)
+        check_owned_name(r, &s->kit, given);
     else
-        for (const struct document_node *n = given->children; n; n = n->next) check_owned_name(r, &s->kit, n);
+        for (const struct document_node *n = given->children; n; n = n->next)
+            check_owned_name(r, &s->kit, n);
 }
 
 void check_scenario(const struct reading *r, const struct scenario *s)

@@ -21,18 +21,22 @@ const struct choice *choices_find(const struct scenario *s, const char *key)
 static struct value *choices_reserve(const struct reading *r, struct choice *choice, size_t count)
 {
     choice->options = arena_take(r->arena, count ? count : 1, sizeof *choice->options);
-    if (!choice->options) complain_memory(r->out);
+    if (!choice->options)
+        complain_memory(r->out);
     return choice->options;
 }
 
 /* One option; a second one that means the same is refused. */
-static void choices_add(const struct reading *r, const struct kit *kit, struct choice *choice, const struct document_node *given)
+static void choices_add(const struct reading *r, const struct kit *kit, struct choice *choice,
+                        const struct document_node *given)
 {
     struct value v = value_read(r, choice->row, given);
-    if (choice->row->kind == KEYS_ENTRY) kit_resolve(r, kit, keys_entry_kind(choice->row), &v);
+    if (choice->row->kind == KEYS_ENTRY)
+        kit_resolve(r, kit, keys_entry_kind(choice->row), &v);
     for (size_t i = 0; i < choice->count; i++) {
         const struct value *other = &choice->options[i];
-        if (v.state != VALUE_GOOD || other->state != VALUE_GOOD || !value_same(choice->row, other, &v)) continue;
+        if (v.state != VALUE_GOOD || other->state != VALUE_GOOD || !value_same(choice->row, other, &v))
+            continue;
         complain_at(r->out, v.place, "`%s` lists %s twice", choice->row->key, v.text);
         return;
     }
@@ -41,13 +45,16 @@ static void choices_add(const struct reading *r, const struct kit *kit, struct c
 
 static void choices_add_default(const struct reading *r, const struct kit *kit, struct choice *choice)
 {
-    if (!choice->row->fallback || !choices_reserve(r, choice, 1)) return;
+    if (!choice->row->fallback || !choices_reserve(r, choice, 1))
+        return;
     choice->options[0] = value_default(r, choice->row);
-    if (choice->row->kind == KEYS_ENTRY) kit_resolve(r, kit, keys_entry_kind(choice->row), &choice->options[0]);
+    if (choice->row->kind == KEYS_ENTRY)
+        kit_resolve(r, kit, keys_entry_kind(choice->row), &choice->options[0]);
     choice->count = 1;
 }
 
-static void choices_read_key(const struct reading *r, const struct kit *kit, struct choice *choice, const struct document_node *given)
+static void choices_read_key(const struct reading *r, const struct kit *kit, struct choice *choice,
+                             const struct document_node *given)
 {
     if (!given) {
         choices_add_default(r, kit, choice);
@@ -55,11 +62,15 @@ static void choices_read_key(const struct reading *r, const struct kit *kit, str
     }
     choice->place = given->place;
     const bool list = given->kind == DOCUMENT_LIST, empty = list ? given->count == 0 : given->null;
-    if (empty) complain_at(r->out, given->place, "`%s` has no option; an empty list leaves no plan", choice->row->key);
-    if (empty || !choices_reserve(r, choice, list ? given->count : 1)) return;
-    if (!list) choices_add(r, kit, choice, given);
+    if (empty)
+        complain_at(r->out, given->place, "`%s` has no option; an empty list leaves no plan", choice->row->key);
+    if (empty || !choices_reserve(r, choice, list ? given->count : 1))
+        return;
+    if (!list)
+        choices_add(r, kit, choice, given);
     else
-        for (const struct document_node *n = given->children; n; n = n->next) choices_add(r, kit, choice, n);
+        for (const struct document_node *n = given->children; n; n = n->next)
+            choices_add(r, kit, choice, n);
 }
 
 /* The material is that of `polymer` unless `plan` names one. */
@@ -67,22 +78,28 @@ static void choices_material(const struct reading *r, struct scenario *s)
 {
     struct choice *choice = &s->choices[keys_find(keys_section(KEYS_PLAN), "material")];
     struct value *polymer = record_value(s->sections[KEYS_POLYMER], "material");
-    if (choice->count > 1) complain_at(r->out, choice->place, "more than one material in plan.material is not in this version");
+    if (choice->count > 1)
+        complain_at(r->out, choice->place, "more than one material in plan.material is not in this version");
     if (choice->count == 0) {
-        if (!choices_reserve(r, choice, 1)) return;
-        choice->options[choice->count++] = polymer->state == VALUE_ABSENT ? value_default(r, keys_polymer_head) : *polymer;
+        if (!choices_reserve(r, choice, 1))
+            return;
+        choice->options[choice->count++] =
+            polymer->state == VALUE_ABSENT ? value_default(r, keys_polymer_head) : *polymer;
         kit_resolve(r, &s->kit, KEYS_MATERIALS, &choice->options[0]);
     } else if (polymer->own && polymer->state == VALUE_GOOD && strcmp(polymer->text, choice->options[0].text) != 0)
-        complain_at(r->out, choice->options[0].place, "`material` is %s here and %s in polymer", choice->options[0].text, polymer->text);
+        complain_at(r->out, choice->options[0].place, "`material` is %s here and %s in polymer",
+                    choice->options[0].text, polymer->text);
     *polymer = choice->options[0];
 }
 
 void choices_read(const struct reading *r, struct scenario *s, const struct document_node *given)
 {
     const struct keys_section *section = keys_section(KEYS_PLAN);
-    if (given && given->kind == DOCUMENT_TEXT && given->null) given = NULL;
+    if (given && given->kind == DOCUMENT_TEXT && given->null)
+        given = NULL;
     const bool map = !given || given->kind == DOCUMENT_MAP;
-    if (!map) complain_at(r->out, given->place, "plan is a map of keys and options, not %s", document_kind_text(given->kind));
+    if (!map)
+        complain_at(r->out, given->place, "plan is a map of keys and options, not %s", document_kind_text(given->kind));
     s->keys = keys_count(section);
     assert(s->keys <= PARTS_PLAN_KEYS);
     for (size_t i = 0; i < s->keys; i++) {
@@ -90,9 +107,12 @@ void choices_read(const struct reading *r, struct scenario *s, const struct docu
         choices_read_key(r, &s->kit, &s->choices[i], document_child(given, s->choices[i].row->key));
     }
     for (const struct document_node *n = given && map ? given->children : NULL; n; n = n->next)
-        if (keys_find(section, n->key) == s->keys) record_refuse_key(r, section, n);
+        if (keys_find(section, n->key) == s->keys)
+            record_refuse_key(r, section, n);
     choices_material(r, s);
-    if (map && !document_child(given, "grade")) complain_at(r->out, given ? given->key_place : r->whole, "plan.grade is missing: which grades come into question, for example grade: [middle]");
+    if (map && !document_child(given, "grade"))
+        complain_at(r->out, given ? given->key_place : r->whole,
+                    "plan.grade is missing: which grades come into question, for example grade: [middle]");
 }
 
 /* Cuts the list to the option that `wanted` means. */
@@ -100,16 +120,20 @@ static void choices_keep(const struct reading *r, struct choice *choice, const s
 {
     char shown[TEXT_SHOWN];
     const struct value v = value_read(r, choice->row, wanted);
-    if (v.state != VALUE_GOOD) return;
+    if (v.state != VALUE_GOOD)
+        return;
     for (size_t i = 0; i < choice->count; i++) {
-        if (choice->options[i].state != VALUE_GOOD || !value_same(choice->row, &choice->options[i], &v)) continue;
+        if (choice->options[i].state != VALUE_GOOD || !value_same(choice->row, &choice->options[i], &v))
+            continue;
         choice->options[0] = choice->options[i];
         choice->count = 1;
         return;
     }
     struct text list = {0};
-    for (size_t i = 0; i < choice->count; i++) text_add(&list, "%s%s", i ? ", " : "", choice->options[i].text ? choice->options[i].text : "?");
-    complain_at(r->out, v.place, "`%s` is not among the options of %s: %s", text_shown(shown, v.text), choice->row->key, list.bytes ? list.bytes : "none");
+    for (size_t i = 0; i < choice->count; i++)
+        text_add(&list, "%s%s", i ? ", " : "", choice->options[i].text ? choice->options[i].text : "?");
+    complain_at(r->out, v.place, "`%s` is not among the options of %s: %s", text_shown(shown, v.text), choice->row->key,
+                list.bytes ? list.bytes : "none");
     free(list.bytes);
 }
 
@@ -134,5 +158,6 @@ void choices_pick(const struct reading *r, struct scenario *s, const char *pick)
     }
     const struct document_input input = {value, strlen(value), place, DOCUMENT_PICK};
     const struct document_node *wanted = document_parse(r->arena, &input, r->out);
-    if (wanted) choices_keep(r, &s->choices[i], wanted);
+    if (wanted)
+        choices_keep(r, &s->choices[i], wanted);
 }

@@ -25,16 +25,20 @@ const char *document_kind_text(enum document_kind kind)
 
 struct document_node *document_child(const struct document_node *map, const char *key)
 {
-    if (!map || map->kind != DOCUMENT_MAP) return NULL;
+    if (!map || map->kind != DOCUMENT_MAP)
+        return NULL;
     for (struct document_node *n = map->children; n; n = n->next)
-        if (strcmp(n->key, key) == 0) return n;
+        if (strcmp(n->key, key) == 0)
+            return n;
     return NULL;
 }
 
 static void document_append(struct document_node *parent, struct document_node *child)
 {
-    if (parent->last) parent->last->next = child;
-    else parent->children = child;
+    if (parent->last)
+        parent->last->next = child;
+    else
+        parent->children = child;
     parent->last = child;
     parent->count++;
 }
@@ -42,7 +46,8 @@ static void document_append(struct document_node *parent, struct document_node *
 struct document_node *document_add(struct arena *a, struct document_node *parent, const char *key)
 {
     struct document_node *child = arena_take(a, 1, sizeof *child);
-    if (!child) return NULL;
+    if (!child)
+        return NULL;
     child->key = key;
     document_append(parent, child);
     return child;
@@ -51,7 +56,8 @@ struct document_node *document_add(struct arena *a, struct document_node *parent
 static struct place document_place(const struct document_reader *r, yaml_mark_t mark)
 {
     struct place p = r->input->place;
-    if (!p.file) return p;
+    if (!p.file)
+        return p;
     p.line = mark.line + 1;
     p.column = mark.column + 1;
     return p;
@@ -59,7 +65,8 @@ static struct place document_place(const struct document_reader *r, yaml_mark_t 
 
 static void document_fail(struct document_reader *r, struct place where, const char *text)
 {
-    if (!r->failed) complain_at(r->out, where, "%s", text);
+    if (!r->failed)
+        complain_at(r->out, where, "%s", text);
     r->failed = true;
 }
 
@@ -80,15 +87,18 @@ static void document_fail_parser(struct document_reader *r)
     }
     if (p->error != YAML_READER_ERROR) {
         if (!r->failed)
-            complain_at(r->out, where, "not YAML: %s%s%s", p->problem ? p->problem : "unreadable", p->context ? ", " : "", p->context ? p->context : "");
+            complain_at(r->out, where, "not YAML: %s%s%s", p->problem ? p->problem : "unreadable",
+                        p->context ? ", " : "", p->context ? p->context : "");
         r->failed = true;
         return;
     }
     if (where.file) {
         where.line = where.column = 1;
         for (size_t i = 0; i < p->problem_offset && i < r->input->size; i++) {
-            if (r->input->bytes[i] == '\n') where.line++, where.column = 1;
-            else where.column++;
+            if (r->input->bytes[i] == '\n')
+                where.line++, where.column = 1;
+            else
+                where.column++;
         }
     }
     document_fail(r, where, "not a text file: a byte that is no UTF-8 text or a control character");
@@ -96,22 +106,35 @@ static void document_fail_parser(struct document_reader *r)
 
 static bool document_next(struct document_reader *r, yaml_event_t *event)
 {
-    if (r->failed) return false;
+    if (r->failed)
+        return false;
     if (!yaml_parser_parse(&r->parser, event)) {
         document_fail_parser(r);
         return false;
     }
     const yaml_char_t *anchor = NULL, *tag = NULL;
     switch (event->type) {
-    case YAML_ALIAS_EVENT: anchor = event->data.alias.anchor; break;
-    case YAML_SCALAR_EVENT: anchor = event->data.scalar.anchor, tag = event->data.scalar.tag; break;
-    case YAML_SEQUENCE_START_EVENT: anchor = event->data.sequence_start.anchor, tag = event->data.sequence_start.tag; break;
-    case YAML_MAPPING_START_EVENT: anchor = event->data.mapping_start.anchor, tag = event->data.mapping_start.tag; break;
-    default: break;
+    case YAML_ALIAS_EVENT:
+        anchor = event->data.alias.anchor;
+        break;
+    case YAML_SCALAR_EVENT:
+        anchor = event->data.scalar.anchor, tag = event->data.scalar.tag;
+        break;
+    case YAML_SEQUENCE_START_EVENT:
+        anchor = event->data.sequence_start.anchor, tag = event->data.sequence_start.tag;
+        break;
+    case YAML_MAPPING_START_EVENT:
+        anchor = event->data.mapping_start.anchor, tag = event->data.mapping_start.tag;
+        break;
+    default:
+        break;
     }
-    if (anchor) document_fail(r, document_place(r, event->start_mark), "anchors and aliases (& and *) are not taken");
-    if (tag) document_fail(r, document_place(r, event->start_mark), "tags (!) are not taken");
-    if (r->failed) yaml_event_delete(event);
+    if (anchor)
+        document_fail(r, document_place(r, event->start_mark), "anchors and aliases (& and *) are not taken");
+    if (tag)
+        document_fail(r, document_place(r, event->start_mark), "tags (!) are not taken");
+    if (r->failed)
+        yaml_event_delete(event);
     return !r->failed;
 }
 
@@ -120,7 +143,8 @@ static bool document_fill(struct document_reader *r, struct document_node *node,
 static bool document_is_null(const yaml_event_t *event)
 {
     const char *text = (const char *)event->data.scalar.value;
-    if (event->data.scalar.style != YAML_PLAIN_SCALAR_STYLE) return false;
+    if (event->data.scalar.style != YAML_PLAIN_SCALAR_STYLE)
+        return false;
     return !*text || strcmp(text, "~") == 0 || strcmp(text, "null") == 0;
 }
 
@@ -134,12 +158,14 @@ static bool document_fill_text(struct document_reader *r, struct document_node *
         return false;
     }
     node->text = arena_copy(r->arena, value, event->data.scalar.length);
-    if (!node->text) document_fail_memory(r);
+    if (!node->text)
+        document_fail_memory(r);
     return node->text != NULL;
 }
 
 /* A node for the event, a value that begins, at the end of `parent`. */
-static bool document_take(struct document_reader *r, struct document_node *parent, const struct document_node *key, const yaml_event_t *event, int depth)
+static bool document_take(struct document_reader *r, struct document_node *parent, const struct document_node *key,
+                          const yaml_event_t *event, int depth)
 {
     struct document_node *child = arena_take(r->arena, 1, sizeof *child);
     if (!child) {
@@ -148,13 +174,18 @@ static bool document_take(struct document_reader *r, struct document_node *paren
     }
     child->place = document_place(r, event->start_mark);
     child->origin = r->input->origin;
-    if (key) child->key = key->text, child->key_place = key->place;
-    if (parent->count >= DOCUMENT_WIDTH) document_fail(r, child->place, "more entries side by side than any scenario has");
+    if (key)
+        child->key = key->text, child->key_place = key->place;
+    if (parent->count >= DOCUMENT_WIDTH)
+        document_fail(r, child->place, "more entries side by side than any scenario has");
     const struct document_node *same = key ? document_child(parent, key->text) : NULL;
     char shown[TEXT_SHOWN];
-    if (same && !r->failed) complain_at(r->out, key->place, "`%s` is given twice", text_shown(shown, key->text));
-    if (r->failed || !document_fill(r, child, event, depth)) return false;
-    if (!same) document_append(parent, child);
+    if (same && !r->failed)
+        complain_at(r->out, key->place, "`%s` is given twice", text_shown(shown, key->text));
+    if (r->failed || !document_fill(r, child, event, depth))
+        return false;
+    if (!same)
+        document_append(parent, child);
     return true;
 }
 
@@ -166,7 +197,8 @@ static bool document_fill_list(struct document_reader *r, struct document_node *
         const bool end = event.type == YAML_SEQUENCE_END_EVENT;
         const bool good = end || document_take(r, node, NULL, &event, depth + 1);
         yaml_event_delete(&event);
-        if (end || !good) return good;
+        if (end || !good)
+            return good;
     }
     return false;
 }
@@ -178,15 +210,19 @@ static bool document_fill_map(struct document_reader *r, struct document_node *n
     while (document_next(r, &event)) {
         struct document_node key = {.place = document_place(r, event.start_mark)};
         const bool end = event.type == YAML_MAPPING_END_EVENT, text = event.type == YAML_SCALAR_EVENT;
-        if (!end && !text) document_fail(r, key.place, "a key is a word, no list and no map");
+        if (!end && !text)
+            document_fail(r, key.place, "a key is a word, no list and no map");
         bool good = end || (text && document_fill_text(r, &key, &event));
         yaml_event_delete(&event);
-        if (end || !good) return good;
+        if (end || !good)
+            return good;
         good = document_next(r, &event);
-        if (!good) return false;
+        if (!good)
+            return false;
         good = document_take(r, node, &key, &event, depth + 1);
         yaml_event_delete(&event);
-        if (!good) return false;
+        if (!good)
+            return false;
     }
     return false;
 }
@@ -197,8 +233,10 @@ static bool document_fill(struct document_reader *r, struct document_node *node,
         document_fail(r, node->place, "nested deeper than any scenario is");
         return false;
     }
-    if (event->type == YAML_SEQUENCE_START_EVENT) return document_fill_list(r, node, depth);
-    if (event->type == YAML_MAPPING_START_EVENT) return document_fill_map(r, node, depth);
+    if (event->type == YAML_SEQUENCE_START_EVENT)
+        return document_fill_list(r, node, depth);
+    if (event->type == YAML_MAPPING_START_EVENT)
+        return document_fill_map(r, node, depth);
     return document_fill_text(r, node, event);
 }
 
@@ -209,18 +247,21 @@ static struct document_node *document_stream(struct document_reader *r)
     struct document_node *root = arena_take(r->arena, 1, sizeof *root);
     yaml_event_t event;
     bool whole = false;
-    if (!root) document_fail_memory(r);
+    if (!root)
+        document_fail_memory(r);
     while (document_next(r, &event)) {
         const struct place where = document_place(r, event.start_mark);
         const yaml_event_type_t type = event.type;
-        if (type == YAML_DOCUMENT_START_EVENT && whole) document_fail(r, where, "a second document (---); a scenario is one");
+        if (type == YAML_DOCUMENT_START_EVENT && whole)
+            document_fail(r, where, "a second document (---); a scenario is one");
         else if (type == YAML_SCALAR_EVENT || type == YAML_SEQUENCE_START_EVENT || type == YAML_MAPPING_START_EVENT) {
             root->place = where;
             root->origin = r->input->origin;
             whole = document_fill(r, root, &event, 1);
         }
         yaml_event_delete(&event);
-        if (type == YAML_STREAM_END_EVENT) break;
+        if (type == YAML_STREAM_END_EVENT)
+            break;
     }
     return whole && !r->failed ? root : NULL;
 }
@@ -233,11 +274,14 @@ struct document_node *document_parse(struct arena *a, const struct document_inpu
         return NULL;
     }
     yaml_parser_set_encoding(&r.parser, YAML_UTF8_ENCODING);
-    const size_t mark = input->size >= 3 && memcmp(input->bytes, "\xef\xbb\xbf", 3) == 0 ? 3 : 0; /* libyaml would count it as a column */
+    const size_t mark = input->size >= 3 && memcmp(input->bytes, "\xef\xbb\xbf", 3) == 0
+                            ? 3
+                            : 0; /* libyaml would count it as a column */
     yaml_parser_set_input_string(&r.parser, (const unsigned char *)input->bytes + mark, input->size - mark);
     struct document_node *root = document_stream(&r);
     yaml_parser_delete(&r.parser);
-    if (!root && !r.failed) complain_at(out, input->place, input->place.file ? "there is nothing in it" : "no value is given");
+    if (!root && !r.failed)
+        complain_at(out, input->place, input->place.file ? "there is nothing in it" : "no value is given");
     return root;
 }
 
@@ -253,10 +297,14 @@ struct document_node *document_read(struct arena *a, const char *path, struct co
     struct document_node *root = NULL;
     errno = 0;
     const size_t size = bytes ? fread(bytes, 1, DOCUMENT_BYTES + 1, file) : 0;
-    if (!bytes) complain_memory(out);
-    else if (ferror(file)) complain_at(out, place, "cannot be read: %s", strerror(errno));
-    else if (size > DOCUMENT_BYTES) complain_at(out, place, "larger than 1 MiB, which no scenario is");
-    else root = document_parse(a, &(struct document_input){bytes, size, place, DOCUMENT_FILE}, out);
+    if (!bytes)
+        complain_memory(out);
+    else if (ferror(file))
+        complain_at(out, place, "cannot be read: %s", strerror(errno));
+    else if (size > DOCUMENT_BYTES)
+        complain_at(out, place, "larger than 1 MiB, which no scenario is");
+    else
+        root = document_parse(a, &(struct document_input){bytes, size, place, DOCUMENT_FILE}, out);
     free(bytes);
     fclose(file);
     return root;

@@ -36,16 +36,16 @@ struct keys_row {
     const char *key;
     enum keys_kind kind;
     enum units_dimension dimension;
-    const char *unit;              /* as people write it, "" for none */
-    double min, max;               /* in `unit` */
-    double later_max;              /* above max up to here: not in this version */
+    const char *unit; /* as people write it, "" for none */
+    double min, max;  /* in `unit` */
+    double later_max; /* above max up to here: not in this version */
     unsigned flags;
     const struct keys_word *words; /* NULL: none */
     const char *fallback;          /* the default as one writes it; NULL: none, and `none` says what then */
     const char *none;
-    const char *hint;              /* said behind the range when a value is outside it; NULL: nothing */
+    const char *hint; /* said behind the range when a value is outside it; NULL: nothing */
     const char *help, *source;
-    size_t offset, size;           /* of the member in the section's compiled struct; size 0: none */
+    size_t offset, size; /* of the member in the section's compiled struct; size 0: none */
 };
 
 /* For the rows: the member that a key is compiled into. */

@@ -5,7 +5,7 @@
 
 #include "sim/scenario/keys.h"
 
-extern const struct keys_row keys_polymer_head[]; /* material */
+extern const struct keys_row keys_polymer_head[];     /* material */
 extern const struct keys_row keys_polymer_material[]; /* what an entry of kit.materials has too */
 extern const struct keys_row keys_polymer_rest[];
 extern const struct keys_row keys_polymer_cleavage[];

@@ -20,12 +20,12 @@ enum value_state { VALUE_ABSENT, VALUE_GOOD, VALUE_BAD /* given, and a complaint
 struct value {
     enum value_state state;
     enum document_origin origin;
-    bool own;                   /* given right here, not taken from an entry or a default */
+    bool own; /* given right here, not taken from an entry or a default */
     struct place place;
-    const char *text;           /* as given */
-    const char *source;         /* of the built-in kit, else NULL */
-    double number;              /* SI; a word's value; NaN unless good */
-    const struct record *entry; /* of KEYS_ENTRY, once found */
+    const char *text;                 /* as given */
+    const char *source;               /* of the built-in kit, else NULL */
+    double number;                    /* SI; a word's value; NaN unless good */
+    const struct record *entry;       /* of KEYS_ENTRY, once found */
     const struct document_node *node; /* of KEYS_OWNED and KEYS_AT_MOST */
 };
 
@@ -33,7 +33,7 @@ struct value {
 struct record {
     const struct keys_section *section;
     struct place place;
-    const char *name;    /* of an entry, else "" */
+    const char *name; /* of an entry, else "" */
     struct value *values;
     struct record *next; /* entry of the same kind */
     struct record *base; /* the built-in entry of the same name that it changes */
@@ -78,6 +78,8 @@ struct scenario {
     struct record *sections[KEYS_SECTIONS]; /* NULL for the kit's kinds and plan */
     struct choice choices[PARTS_PLAN_KEYS];
     size_t keys, candidates;
+    size_t radix[PARTS_PLAN_KEYS];     /* of each key as a digit, see candidates.c */
+    size_t extrapolation, grade, tube; /* their places among the keys */
     const char **zero_sources;
     size_t zero_count;
     struct question question;

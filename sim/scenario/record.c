@@ -12,22 +12,30 @@ void record_refuse_key(const struct reading *r, const struct keys_section *secti
     char shown[TEXT_SHOWN];
     const bool top = section->id == KEYS_TOP;
     struct text_nearest nearest = {.word = node->key};
-    for (size_t i = 0; i < keys_count(section); i++) text_nearest_try(&nearest, keys_row(section, i)->key);
-    if (top) text_nearest_try(&nearest, "kit");
+    for (size_t i = 0; i < keys_count(section); i++)
+        text_nearest_try(&nearest, keys_row(section, i)->key);
+    if (top)
+        text_nearest_try(&nearest, "kit");
     for (size_t id = 0; top && id < KEYS_SECTIONS; id++)
-        if (!strchr(keys_section((enum keys_id)id)->path, '.')) text_nearest_try(&nearest, keys_section((enum keys_id)id)->path);
+        if (!strchr(keys_section((enum keys_id)id)->path, '.'))
+            text_nearest_try(&nearest, keys_section((enum keys_id)id)->path);
     const char *home = keys_home(node->key, section->id), *where = top ? "a scenario" : section->path;
     text_shown(shown, node->key);
-    if (nearest.best && (!home || nearest.distance < 2)) complain_at(r->out, node->key_place, "unknown key `%s` in %s; did you mean `%s`?", shown, where, nearest.best);
-    else if (home) complain_at(r->out, node->key_place, "unknown key `%s` in %s; it is a key of %s", shown, where, home);
-    else complain_at(r->out, node->key_place, "unknown key `%s` in %s; `vicinal kit` lists every key", shown, where);
+    if (nearest.best && (!home || nearest.distance < 2))
+        complain_at(r->out, node->key_place, "unknown key `%s` in %s; did you mean `%s`?", shown, where, nearest.best);
+    else if (home)
+        complain_at(r->out, node->key_place, "unknown key `%s` in %s; it is a key of %s", shown, where, home);
+    else
+        complain_at(r->out, node->key_place, "unknown key `%s` in %s; `vicinal kit` lists every key", shown, where);
 }
 
-struct record *record_read(const struct reading *r, const struct keys_section *section, const struct document_node *given)
+struct record *record_read(const struct reading *r, const struct keys_section *section,
+                           const struct document_node *given)
 {
     const size_t count = keys_count(section);
     struct record *record = arena_take(r->arena, 1, sizeof *record);
-    if (record) record->values = arena_take(r->arena, count, sizeof *record->values);
+    if (record)
+        record->values = arena_take(r->arena, count, sizeof *record->values);
     if (!record || !record->values) {
         complain_memory(r->out);
         return NULL;
@@ -35,17 +43,22 @@ struct record *record_read(const struct reading *r, const struct keys_section *s
     record->section = section;
     record->name = "";
     record->place = given ? given->place : r->whole;
-    for (size_t i = 0; i < count; i++) record->values[i].number = (double)NAN;
-    if (!given || (given->kind == DOCUMENT_TEXT && given->null)) return record;
+    for (size_t i = 0; i < count; i++)
+        record->values[i].number = (double)NAN;
+    if (!given || (given->kind == DOCUMENT_TEXT && given->null))
+        return record;
     if (given->kind != DOCUMENT_MAP) {
-        complain_at(r->out, given->place, "%s%s is a map of keys and values, not %s", keys_is_kit(section->id) ? "an entry of " : "", section->path, document_kind_text(given->kind));
+        complain_at(r->out, given->place, "%s%s is a map of keys and values, not %s",
+                    keys_is_kit(section->id) ? "an entry of " : "", section->path, document_kind_text(given->kind));
         record->bad = true;
         return record;
     }
     for (const struct document_node *n = given->children; n; n = n->next) {
         const size_t i = keys_find(section, n->key);
-        if (i < count) record->values[i] = value_read(r, keys_row(section, i), n);
-        else record_refuse_key(r, section, n);
+        if (i < count)
+            record->values[i] = value_read(r, keys_row(section, i), n);
+        else
+            record_refuse_key(r, section, n);
     }
     return record;
 }
@@ -54,7 +67,8 @@ static const struct value *record_by_row(const struct record *record, const stru
 {
     const size_t count = keys_count(record->section);
     for (size_t i = 0; i < count; i++)
-        if (keys_row(record->section, i) == row) return &record->values[i];
+        if (keys_row(record->section, i) == row)
+            return &record->values[i];
     return NULL;
 }
 
@@ -63,7 +77,8 @@ void record_fill(const struct reading *r, struct record *record, const struct re
     const size_t count = keys_count(record->section);
     for (size_t i = 0; i < count; i++) {
         const struct keys_row *row = keys_row(record->section, i);
-        if (record->values[i].state != VALUE_ABSENT) continue;
+        if (record->values[i].state != VALUE_ABSENT)
+            continue;
         const struct value *taken = parent ? record_by_row(parent, row) : NULL;
         record->values[i] = taken && taken->state != VALUE_ABSENT ? *taken : value_default(r, row);
         record->values[i].own = false;
@@ -92,16 +107,23 @@ bool record_is_good(const struct record *record, const char *key)
 void record_store(const struct keys_row *row, const struct value *value, void *target)
 {
     unsigned char *at = (unsigned char *)target + row->offset;
-    if (!row->size || value->state != VALUE_GOOD) return;
-    if (row->kind == KEYS_TEXT) memcpy(at, &value->text, sizeof value->text);
-    else if (row->kind == KEYS_QUANTITY) memcpy(at, &value->number, sizeof value->number);
-    else if (row->kind == KEYS_COUNT) memcpy(at, &(size_t){(size_t)value->number}, sizeof(size_t));
-    else if (row->size == sizeof(bool)) memcpy(at, &(bool){value->number > 0.5}, sizeof(bool));
-    else memcpy(at, &(int){(int)value->number}, sizeof(int));
+    if (!row->size || value->state != VALUE_GOOD)
+        return;
+    if (row->kind == KEYS_TEXT)
+        memcpy(at, &value->text, sizeof value->text);
+    else if (row->kind == KEYS_QUANTITY)
+        memcpy(at, &value->number, sizeof value->number);
+    else if (row->kind == KEYS_COUNT)
+        memcpy(at, &(size_t){(size_t)value->number}, sizeof(size_t));
+    else if (row->size == sizeof(bool))
+        memcpy(at, &(bool){value->number > 0.5}, sizeof(bool));
+    else
+        memcpy(at, &(int){(int)value->number}, sizeof(int));
 }
 
 void record_compile(const struct record *record, void *target)
 {
     const size_t count = keys_count(record->section);
-    for (size_t i = 0; i < count; i++) record_store(keys_row(record->section, i), &record->values[i], target);
+    for (size_t i = 0; i < count; i++)
+        record_store(keys_row(record->section, i), &record->values[i], target);
 }

@@ -6,7 +6,8 @@
 
 /* Reads what is given; `given` may be NULL (nothing is). What is left out
  * stays absent. NULL: out of memory. */
-struct record *record_read(const struct reading *r, const struct keys_section *section, const struct document_node *given);
+struct record *record_read(const struct reading *r, const struct keys_section *section,
+                           const struct document_node *given);
 
 /* Says that a section has no such key, and which it may be. */
 void record_refuse_key(const struct reading *r, const struct keys_section *section, const struct document_node *node);

@@ -3,10 +3,10 @@
 #ifndef VICINAL_SCENARIO_SCENARIO_H
 #define VICINAL_SCENARIO_SCENARIO_H
 
+#include <jansson.h>
 #include <stdbool.h>
 #include <stddef.h>
 #include <stdint.h>
-#include <jansson.h>
 
 #include "sim/base/complain.h"
 #include "sim/scenario/plan.h"
@@ -35,7 +35,7 @@ struct scenario *scenario_built_in(struct complaints *out);
 struct kit;
 const struct kit *scenario_kit(const struct scenario *s);
 
-const char *scenario_name(const struct scenario *s); /* file name without folder and ending */
+const char *scenario_name(const struct scenario *s);  /* file name without folder and ending */
 const char *scenario_title(const struct scenario *s); /* "" when none is given */
 const struct question *scenario_question(const struct scenario *s);
 const struct cost_rules *scenario_cost(const struct scenario *s);
