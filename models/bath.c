@@ -172,17 +172,35 @@ struct bath_step bath_run(struct bath_times times, double sigma_K, double run_s,
     return step;
 }
 
-struct bath_step bath_idle(struct bath_times times, double sigma_K, double empty_s, double wait_s)
+/* Two stretches with a change of the liquid between them: the share `kept` of
+ * l is carried from the end of the first into the second. */
+static struct bath_step two_stretches(struct bath_times times, double sigma_K, double first_s, double second_s, double kept)
 {
-    const struct transition empty = transition(times, empty_s), wait = transition(times, wait_s);
+    const struct transition first = transition(times, first_s), second = transition(times, second_s);
+    const int row[2] = {X, L};
     double cov[BATH_OUTPUTS][BATH_OUTPUTS] = {{0}};
     struct bath_step step = {0};
-    const int row[2] = {X, L};
-    const double x_var = empty.cov[X][X];
     for (int i = 0; i < 2; i++) {
-        step.from_x[i] = wait.phi[row[i]][X] * empty.phi[X][X];
-        for (int j = 0; j < 2; j++) cov[i][j] = wait.cov[row[i]][row[j]] + wait.phi[row[i]][X] * wait.phi[row[j]][X] * x_var;
+        /* what output i takes of x and l at the end of the first stretch */
+        const double by_x = second.phi[row[i]][X], by_l = second.phi[row[i]][L] * kept;
+        step.from_x[i] = by_x * first.phi[X][X] + by_l * first.phi[L][X];
+        step.from_l[i] = by_l * first.phi[L][L];
+        for (int j = 0; j < 2; j++) {
+            const double and_x = second.phi[row[j]][X], and_l = second.phi[row[j]][L] * kept;
+            cov[i][j] = second.cov[row[i]][row[j]] + by_x * and_x * first.cov[X][X] + by_l * and_l * first.cov[L][L] +
+                        (by_x * and_l + by_l * and_x) * first.cov[X][L];
+        }
     }
     factor(step.noise, cov, sigma_K);
     return step;
+}
+
+struct bath_step bath_idle(struct bath_times times, double sigma_K, double empty_s, double wait_s)
+{
+    return two_stretches(times, sigma_K, empty_s, wait_s, 0.0);
+}
+
+struct bath_step bath_addition(struct bath_times times, double sigma_K, double mix_s, double wait_s, double kept)
+{
+    return two_stretches(times, sigma_K, mix_s, wait_s, kept);
 }

@@ -36,4 +36,9 @@ struct bath_step bath_run(struct bath_times times, double sigma_K, double run_s,
  * empty_s with l = 0 and follows for wait_s. Only the first two outputs. */
 struct bath_step bath_idle(struct bath_times times, double sigma_K, double empty_s, double wait_s);
 
+/* Adding solvent to what is in the tube: x and l go on for mix_s, then the
+ * share `kept` of the liquid, and of l with it, is left in the mixture, which
+ * follows for wait_s. Only the first two outputs. */
+struct bath_step bath_addition(struct bath_times times, double sigma_K, double mix_s, double wait_s, double kept);
+
 #endif

@@ -22,14 +22,28 @@ static void excluded_roots(double fraction, struct scission_chance chance, doubl
     share[0] = 1.0 - share[1];
 }
 
+struct scission_roots scission_roots(enum scission_neighbours neighbours, double fraction, struct scission_chance chance)
+{
+    struct scission_roots roots = {{1.0, 0.0}, {fraction * chance.head_to_head + (1.0 - fraction) * chance.other, 1.0}};
+    if (neighbours == NEIGHBOURS_EXCLUDED) excluded_roots(fraction, chance, roots.d, roots.share);
+    return roots;
+}
+
+double scission_average(const struct chains *chains, const struct scission_roots *roots)
+{
+    double sum = 0.0;
+    for (int i = 0; i < 2; i++)
+        if (roots->share[i] != 0.0) sum += roots->share[i] * chains_pieces(chains, roots->d[i]);
+    return pow(sum / chains->xn, 1.0 / chains->sums.a);
+}
+
 struct scission_chains scission_cut(enum scission_neighbours neighbours, double fraction, struct scission_chance chance, double xn)
 {
-    double one_minus_root[2] = {fraction * chance.head_to_head + (1.0 - fraction) * chance.other, 1.0};
-    struct scission_chains chains = {.share = {1.0, 0.0}};
-    if (neighbours == NEIGHBOURS_EXCLUDED) excluded_roots(fraction, chance, one_minus_root, chains.share);
+    const struct scission_roots roots = scission_roots(neighbours, fraction, chance);
+    struct scission_chains chains = {.share = {roots.share[0], roots.share[1]}};
     const double q = 1.0 / xn;
     for (int i = 0; i < 2; i++) {
-        const double d = one_minus_root[i];
+        const double d = roots.d[i];
         chains.one_minus_w[i] = q + d - q * d;
         chains.w[i] = 1.0 - chains.one_minus_w[i];
     }

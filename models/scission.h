@@ -1,7 +1,8 @@
-/* Selective cutting of most-probable chains at their head-to-head links. */
+/* Selective cutting of chains at their head-to-head links. */
 #ifndef VICINAL_MODELS_SCISSION_H
 #define VICINAL_MODELS_SCISSION_H
 
+#include "models/chains.h"
 #include "models/polymer.h"
 
 enum scission_neighbours { NEIGHBOURS_EXCLUDED, NEIGHBOURS_INDEPENDENT };
@@ -12,7 +13,20 @@ struct scission_chance {
     double head_to_head, other;
 };
 
-/* Chains after cutting. The chance S(m) that m linkages in a row are all uncut
+/* The chance S(m) that m linkages in a row are all uncut, as a sum of two
+ * powers: share_i (1 - d_i)^m. The second share is 0 for independent ones. */
+struct scission_roots {
+    double share[2], d[2];
+};
+
+/* `fraction` is the head-to-head share of the linkages, -0.5 to 0.5 (below
+ * zero only as the continuation a reduction needs). */
+struct scission_roots scission_roots(enum scission_neighbours neighbours, double fraction, struct scission_chance chance);
+
+/* Viscosity average in units of any distribution after cutting. */
+double scission_average(const struct chains *chains, const struct scission_roots *roots);
+
+/* Most-probable chains after cutting. The chance S(m) that m linkages in a row are all uncut
  * is a sum of two powers, S(m) = sum_i share_i root_i^m: a two-state Markov
  * chain along the linkages (neighbours excluded), or one power (independent).
  * Started from a most-probable distribution, q = 1/xn, the number of chains of
@@ -26,8 +40,7 @@ struct scission_chains {
     double share[2], w[2], one_minus_w[2];
 };
 
-/* `fraction` is the head-to-head share of the linkages, -0.5 to 0.5 (below
- * zero only as the continuation a reduction needs); xn >= 1. */
+/* xn >= 1. */
 struct scission_chains scission_cut(enum scission_neighbours neighbours, double fraction, struct scission_chance chance, double xn);
 
 /* Averages in units: viscosity, number, weight. The viscosity average is not a

@@ -51,13 +51,14 @@ enum streams_purpose {
     STREAMS_LEVEL,
     STREAMS_DAY,
     STREAMS_FILLING, /* a filling with its runs, spare ones last */
+    STREAMS_ORDER,   /* the deal of a shuffled order */
     STREAMS_PURPOSES
 };
 
-enum streams_solution { STREAMS_NONE, STREAMS_WATER, STREAMS_INTACT, STREAMS_CLEAVED };
+enum streams_solution { STREAMS_NONE, STREAMS_WATER, STREAMS_INTACT, STREAMS_CLEAVED, STREAMS_BLANK };
 
-/* Where in the study; each below 256, the level below 65536. For water the day
- * stands for the level. */
+/* Where in the study; each below 256, the level below 65536. For water and blank
+ * the day stands for the level. */
 struct streams_place {
     unsigned polymer, preparation, solution, level, filling;
 };

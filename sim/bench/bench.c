@@ -5,17 +5,6 @@
 
 #include "models/solution.h"
 
-/* The filling in the tube: what its runs have in common. */
-struct filled {
-    const struct design_liquid *liquid;
-    double constant[LANES];  /* C f_h */
-    double slow[LANES];      /* dust, drainage, and the solution's offset, on the time */
-    double coil[LANES];      /* y in the tube */
-    double thick[LANES];     /* viscosity over that of water, at the set temperature */
-    double heavy[LANES];     /* what the polymer adds to the density [kg/m3] */
-    double gradient_K[LANES];
-};
-
 void bench_open_day(struct bench *b, double draws[][LANES])
 {
     const struct bath *const bath = &b->design->plan->bath;
@@ -37,33 +26,34 @@ static double rounded(double x, double resolution)
     return ((x / resolution + big) - big) * resolution;
 }
 
-static void thicken(const struct bench *b, struct filled *f)
+static void thicken(const struct bench *b, struct bench_filled *f)
 {
-    const struct design_liquid *const q = f->liquid;
-    const double reagent = 1.0 + b->design->plan->cleavage.reagent_viscosity * q->reagent;
-    const double *const k = b->truth.interaction[q->series < SERIES ? q->series : INTACT];
+    const double reagent = 1.0 + b->design->plan->cleavage.reagent_viscosity * f->liquid->reagent;
+    const double *const k = b->truth.interaction[f->series];
     FOR_LANES(l) f->thick[l] = reagent * (1.0 + solution_specific(b->design->plan->material.law, k[l], f->coil[l]));
 }
 
-/* What is in the tube: the liquid, and what the last filling of the day left. */
-LANES_WIDE static void pour(const struct bench *b, size_t filling, struct filled *f)
+/* A fresh filling: the liquid as made, and what the last filling of the day
+ * left. Water and blank take the interaction of what they receive. */
+LANES_WIDE static void pour(const struct bench *b, size_t filling, struct bench_filled *f)
 {
     const struct design *const d = b->design;
     const struct notebook_filling *const now = &d->filling[filling];
+    const size_t i = design_liquid_of(d, now);
     const bool first = filling == 0 || now[-1].day != now->day;
-    const size_t i = design_liquid_of(d, now), before = first ? i : design_liquid_of(d, &now[-1]);
-    const double r = d->plan->habits.carry_over;
-    const double weight = 1.0 - d->plan->material.specific_volume_m3_kg * water_density(d->plan->habits.temperature_K);
+    const double r = first ? 0.0 : d->plan->habits.carry_over;
     f->liquid = &d->liquid[i];
+    f->series = f->liquid->series < SERIES ? f->liquid->series : first ? INTACT : b->filled.series;
     FOR_LANES(l)
     {
-        f->coil[l] = (1.0 - r) * b->truth.coil[i][l] + r * b->truth.coil[before][l];
-        f->heavy[l] = weight * ((1.0 - r) * b->truth.conc_kg_m3[i][l] + r * b->truth.conc_kg_m3[before][l]);
+        f->made_coil[l] = b->truth.coil[i][l];
+        f->made_polymer[l] = b->truth.conc_kg_m3[i][l];
+        f->coil[l] = (1.0 - r) * f->made_coil[l] + r * b->filled.made_coil[l];
+        f->polymer[l] = (1.0 - r) * f->made_polymer[l] + r * b->filled.made_polymer[l];
     }
-    thicken(b, f);
 }
 
-LANES_WIDE static void set_up(const struct bench *b, const struct draws_filling *draws, struct filled *f)
+LANES_WIDE static void set_up(const struct bench *b, const struct draws_filling *draws, struct bench_filled *f)
 {
     const struct habits *const h = &b->design->plan->habits;
     const struct tube *const tube = &b->design->plan->tube;
@@ -81,24 +71,77 @@ LANES_WIDE static void set_up(const struct bench *b, const struct draws_filling 
     if (polymer) FOR_LANES(l) f->slow[l] *= b->truth.solution_slow[l];
 }
 
-/* From the end of the last filling to the first run of this one. The liquid is
- * poured at room temperature and follows; its deviation from the course
- * D(s) - R tau_f of bath and gradient decays. */
-LANES_WIDE static void wait_for(struct bench *b, const struct draws_filling *draws, const struct filled *f)
+/* The course that the liquid's temperature nears, D(s) - R tau_f, at a time of
+ * the day: bath without x, gradient, and drift that lags behind. */
+static double course_K(const struct bench *b, const struct bench_filled *f, int l, double clock_s)
+{
+    const struct habits *const h = &b->design->plan->habits;
+    return h->temperature_K - b->truth.calibration_K[l] + b->day_K[l] + f->gradient_K[l] + b->drift_K_s[l] * (clock_s - h->lag_s);
+}
+
+/* Bath and liquid's answer to it over the time before the first run. */
+static void step_before(struct bench *b, const struct bath_step *step, const struct draws_filling *draws)
+{
+    FOR_LANES(l)
+    {
+        const double n0 = draws->once[DRAWS_IDLE_X][l], n1 = draws->once[DRAWS_IDLE_L][l], x = b->bath_K[l], y = b->liquid_K[l];
+        b->bath_K[l] = step->from_x[0] * x + step->noise[0][0] * n0;
+        b->liquid_K[l] = step->from_x[1] * x + step->from_l[1] * y + step->noise[1][0] * n0 + step->noise[1][1] * n1;
+    }
+}
+
+/* A fresh filling, from the end of the last one to the first run. The liquid
+ * is poured at room temperature; its deviation from the course decays. */
+LANES_WIDE static void wait_for(struct bench *b, const struct draws_filling *draws, const struct bench_filled *f)
 {
     const struct design *const d = b->design;
     const struct habits *const h = &d->plan->habits;
-    const struct bath_step *const idle = &d->idle;
+    step_before(b, &d->idle, draws);
     FOR_LANES(l)
     {
-        const double n0 = draws->once[DRAWS_IDLE_X][l], n1 = draws->once[DRAWS_IDLE_L][l], x = b->bath_K[l];
         const double poured_s = b->clock_s[l] + h->clean_and_fill_s;
-        const double course = h->temperature_K - b->truth.calibration_K[l] + b->day_K[l] + f->gradient_K[l] + b->drift_K_s[l] * (poured_s - h->lag_s);
-        b->bath_K[l] = idle->from_x[0] * x + idle->noise[0][0] * n0;
-        b->liquid_K[l] = idle->from_x[1] * x + idle->noise[1][0] * n0 + idle->noise[1][1] * n1;
-        b->lag_K[l] = (h->room_K - course) * d->lag_wait;
+        b->lag_K[l] = (h->room_K - course_K(b, f, l, poured_s)) * d->lag_wait;
         b->clock_s[l] = poured_s + h->equilibrate_s;
     }
+}
+
+/* Solvent at room temperature is added to what is in the tube and mixed. What
+ * was carried over is diluted with the rest. */
+static void add_solvent(struct bench *b, size_t filling, const struct draws_filling *draws, const double delivery[LANES])
+{
+    const struct design *const d = b->design;
+    const struct habits *const h = &d->plan->habits;
+    struct bench_filled *const f = &b->filled;
+    f->liquid = &d->liquid[design_liquid_of(d, &d->filling[filling])];
+    const double kept = 1.0 - f->liquid->added_m3 / f->liquid->volume_m3; /* nominal volumes mix the temperatures */
+    step_before(b, &f->liquid->addition, draws);
+    FOR_LANES(l)
+    {
+        const double volume = f->volume_m3[l] + f->liquid->added_m3 + b->truth.pipette_m3[l] + d->plan->solutions.delivery_u_m3 * delivery[l];
+        const double thinner = f->volume_m3[l] / volume;
+        const double mixed_s = b->clock_s[l] + h->add_and_mix_s;
+        f->volume_m3[l] = volume;
+        f->coil[l] *= thinner;
+        f->polymer[l] *= thinner;
+        f->made_coil[l] *= thinner;
+        f->made_polymer[l] *= thinner;
+        b->lag_K[l] = (kept * b->lag_K[l] * d->lag_mix + (1.0 - kept) * (h->room_K - course_K(b, f, l, mixed_s))) * d->lag_wait;
+        b->clock_s[l] = mixed_s + h->equilibrate_s;
+    }
+    thicken(b, f);
+}
+
+/* A fresh filling, or the charge of a loading. */
+static void fill(struct bench *b, size_t filling, const struct draws_filling *draws, const double delivery[LANES])
+{
+    const struct design *const d = b->design;
+    struct bench_filled f;
+    pour(b, filling, &f);
+    set_up(b, draws, &f);
+    wait_for(b, draws, &f);
+    FOR_LANES(l) f.volume_m3[l] = d->plan->tube.charge_m3 + b->truth.pipette_m3[l] + d->plan->solutions.delivery_u_m3 * delivery[l];
+    thicken(b, &f);
+    b->filled = f;
 }
 
 /* One run: its draws, the lanes in which it is made (1, else 0), and the
@@ -123,7 +166,7 @@ static inline void run_step(const struct bath_step *s, const struct bench *b, do
 
 /* Temperatures of one run: the liquid's mean, and what is read. The state goes
  * on to the start of the next run in the lanes that `go`. */
-LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f, struct run *r, double read_K[LANES])
+LANES_WIDE static void run_temperatures(struct bench *b, const struct bench_filled *f, struct run *r, double read_K[LANES])
 {
     double(*const n)[LANES] = r->draws;
     const double *const go = r->go;
@@ -154,20 +197,21 @@ LANES_WIDE static void run_temperatures(struct bench *b, const struct filled *f,
 }
 
 /* The true efflux time of one run [s]. */
-LANES_WIDE static void run_efflux(const struct bench *b, struct filled *f, const double liquid_K[LANES], double out_s[LANES])
+LANES_WIDE static void run_efflux(const struct bench *b, struct bench_filled *f, const double liquid_K[LANES], double out_s[LANES])
 {
     const struct design *const d = b->design;
     const struct plan *const p = d->plan;
     const double dense = 1.0 + p->cleavage.reagent_density * f->liquid->reagent;
     const double swells = p->material.temperature_coefficient_1_K;
+    const double weight = 1.0 - p->material.specific_volume_m3_kg * water_density(p->habits.temperature_K);
     double nu[LANES];
     if (swells != 0.0) {
-        struct filled warm = *f;
+        struct bench_filled warm = *f;
         FOR_LANES(l) warm.coil[l] *= exp(swells * (liquid_K[l] - p->habits.temperature_K));
         thicken(b, &warm);
         memcpy(f->thick, warm.thick, sizeof f->thick);
     }
-    FOR_LANES(l) nu[l] = water_fit_viscosity(&d->water, liquid_K[l]) * f->thick[l] / (water_density(liquid_K[l]) * dense + f->heavy[l]);
+    FOR_LANES(l) nu[l] = water_fit_viscosity(&d->water, liquid_K[l]) * f->thick[l] / (water_density(liquid_K[l]) * dense + weight * f->polymer[l]);
     if (p->tube.ends == TUBE_FLARED)
         FOR_LANES(l) out_s[l] = tube_efflux(f->constant[l], TUBE_FLARED, b->truth.kinetic[l], nu[l]);
     else
@@ -190,8 +234,9 @@ LANES_WIDE static void run_timing(const struct plan *p, double n[][LANES], doubl
 }
 
 /* Run number `number` of a filling, in the lanes that go. */
-static void make_run(struct bench *b, size_t filling, struct filled *f, struct run *r, size_t number)
+static void make_run(struct bench *b, size_t filling, struct run *r, size_t number)
 {
+    struct bench_filled *const f = &b->filled;
     struct notebook_run *const entry = &notebook_runs(&b->book, filling)[number];
     run_temperatures(b, f, r, entry->read_K);
     run_efflux(b, f, r->liquid_K, entry->time_s);
@@ -201,7 +246,7 @@ static void make_run(struct bench *b, size_t filling, struct filled *f, struct r
 }
 
 /* Spare runs in the lanes whose runs do not agree, while there are any left. */
-static void make_spare_runs(struct bench *b, size_t filling, struct filled *f, struct draws_filling *draws)
+static void make_spare_runs(struct bench *b, size_t filling, struct draws_filling *draws)
 {
     const struct design *const d = b->design;
     const size_t planned = d->filling[filling].runs;
@@ -218,24 +263,24 @@ static void make_spare_runs(struct bench *b, size_t filling, struct filled *f, s
             if (!agreed[l]) draws_spare(draws, l, r);
         }
         if (!any) return;
-        make_run(b, filling, f, &spare, r);
+        make_run(b, filling, &spare, r);
         FOR_LANES(l) agreed[l] = agreed[l] || notebook_agrees(&d->assumed, &b->book, filling, l);
     }
 }
 
-void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws)
+void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws, const double delivery[LANES])
 {
-    struct filled f;
     struct run run;
     if (b->started_s) memcpy(b->started_s[filling], b->clock_s, sizeof b->clock_s);
-    pour(b, filling, &f);
-    set_up(b, draws, &f);
-    wait_for(b, draws, &f);
+    if (b->design->filling[filling].added)
+        add_solvent(b, filling, draws, delivery);
+    else
+        fill(b, filling, draws, delivery);
     memset(b->book.made[filling], 0, LANES);
     FOR_LANES(l) run.go[l] = 1.0;
     for (size_t r = 0; r < b->design->filling[filling].runs; r++) {
         run.draws = draws->run[r];
-        make_run(b, filling, &f, &run, r);
+        make_run(b, filling, &run, r);
     }
-    make_spare_runs(b, filling, &f, draws);
+    make_spare_runs(b, filling, draws);
 }

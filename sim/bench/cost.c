@@ -11,7 +11,7 @@ struct cost cost_of(const struct design *d, const struct cost_rules *rules, doub
 
 bool cost_too_dear(const struct design *d, const struct cost_rules *rules, struct cost cost, char *why, size_t size)
 {
-    const double hours = cost.hours_s / 3600.0, days = (double)d->layout.days, grams = d->polymer_kg * 1e3;
+    const double hours = cost.hours_s / 3600.0, days = (double)d->days, grams = d->polymer_kg * 1e3;
     const double most_grams = rules->at_most_polymer_kg * 1e3;
     if (days > rules->at_most_days)
         snprintf(why, size, "takes %.0f days, over the %.0f allowed", days, rules->at_most_days);

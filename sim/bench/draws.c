@@ -10,6 +10,13 @@ struct draws_key draws_key(uint64_t seed, uint64_t first_study)
     return key;
 }
 
+void draws_deal(uint64_t seed, size_t count, size_t order[])
+{
+    struct streams_state state = streams_open(streams_study_key(seed, 0), STREAMS_ORDER, (struct streams_place){0});
+    gsl_rng rng = {streams_type, &state};
+    gsl_ran_shuffle(&rng, order, count, sizeof *order);
+}
+
 static double normal(gsl_rng *rng)
 {
     return gsl_ran_gaussian_ziggurat(rng, 1.0);

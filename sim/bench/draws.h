@@ -46,6 +46,10 @@ enum draws_run {
     DRAWS_RUN
 };
 
+/* Deal `count` numbers into an order, from the scenario's seed alone: the same
+ * for every study. */
+void draws_deal(uint64_t seed, size_t count, size_t order[]);
+
 /* What keys the streams of LANES studies side by side. */
 struct draws_key {
     uint64_t study[LANES];

@@ -31,11 +31,26 @@ static void missing(struct design *d, const char *what, double needed_m3, double
              asked_m3 > 0.0 ? "the one asked for" : "the largest flask", largest * 1e6, (needed_m3 - largest) * 1e6);
 }
 
+/* What dilution in the tube cannot do. */
+static void check_in_tube(struct design *d)
+{
+    const struct plan *const p = d->plan;
+    double most = 0.0;
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) most = fmax(most, d->liquid[i].volume_m3);
+    if (!p->tube.suspended_level)
+        snprintf(d->why, sizeof d->why, "dilution in the tube needs a suspended-level tube, which %s is not", p->tube.name);
+    else if (p->solutions.shared_stock)
+        snprintf(d->why, sizeof d->why, "dilution in the tube needs a stock for each series, not a shared one");
+    else if (most > p->tube.capacity_m3 * (1.0 + 1e-12))
+        snprintf(d->why, sizeof d->why, "%s must hold %.1f mL for the lowest level, but its capacity is %.1f mL: %.1f mL are missing", p->tube.name,
+                 most * 1e6, p->tube.capacity_m3 * 1e6, (most - p->tube.capacity_m3) * 1e6);
+}
+
 static void choose_level_flask(struct design *d)
 {
     const struct solutions *const so = &d->plan->solutions;
     double needed = 0.0;
-    for (size_t i = 1; i < d->liquids; i++)
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++)
         if (d->liquid[i].diluted) needed = fmax(needed, (double)d->plan->fillings[d->liquid[i].series] * per_filling_m3(d->plan));
     if (needed == 0.0) return;
     d->flasks.level_m3 = choose(so->level_volume_m3, needed);
@@ -46,9 +61,10 @@ static void choose_level_flask(struct design *d)
 static double stock_needed(const struct design *d, size_t first, size_t last)
 {
     double needed = 0.0;
-    for (size_t i = 1; i < d->liquids; i++) {
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) {
         const struct design_liquid *const q = &d->liquid[i];
         if (q->series < first || q->series > last) continue;
+        if (d->plan->dilution == DILUTION_IN_TUBE && q->diluted) continue;
         needed += q->diluted ? d->flasks.level_m3 * q->conc_kg_m3 / d->flasks.stock_conc_kg_m3[q->series]
                              : (double)d->plan->fillings[q->series] * per_filling_m3(d->plan);
     }
@@ -82,29 +98,32 @@ static void dilution_uncertainty(struct design *d, struct design_liquid *q)
 
 void flasks_choose(struct design *d)
 {
-    const bool shared = d->plan->solutions.shared_stock;
+    const bool shared = d->plan->solutions.shared_stock, in_tube = d->plan->dilution == DILUTION_IN_TUBE;
     double top[SERIES] = {0};
-    for (size_t i = 1; i < d->liquids; i++) top[d->liquid[i].series] = d->liquid[i].conc_kg_m3; /* rising */
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) top[d->liquid[i].series] = d->liquid[i].conc_kg_m3; /* rising */
     for (size_t s = 0; s < SERIES; s++) d->flasks.stock_conc_kg_m3[s] = shared ? fmax(top[INTACT], top[CLEAVED]) : top[s];
-    for (size_t i = 1; i < d->liquids; i++) {
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) {
         struct design_liquid *const q = &d->liquid[i];
         const double share = q->conc_kg_m3 / d->flasks.stock_conc_kg_m3[q->series];
         q->diluted = share < 1.0 - 1e-12;
-        q->reagent = q->series == CLEAVED ? share : 0.0;
+        q->reagent = q->series != CLEAVED ? 0.0 : d->plan->cleavage.blank_diluent ? 1.0 : share;
     }
-    choose_level_flask(d);
+    if (in_tube)
+        check_in_tube(d);
+    else
+        choose_level_flask(d);
     if (shared)
         choose_stock(d, INTACT, CLEAVED);
     else
         for (size_t s = 0; s < SERIES; s++) choose_stock(d, s, s);
-    for (size_t i = 1; i < d->liquids; i++) dilution_uncertainty(d, &d->liquid[i]);
+    for (size_t i = DESIGN_LEVELS; !in_tube && i < d->liquids; i++) dilution_uncertainty(d, &d->liquid[i]);
 }
 
 double flasks_preparation_s(const struct design *d, const struct cost_rules *cost)
 {
     const double stocks = d->plan->solutions.shared_stock ? 1.0 : 2.0;
     double seconds = stocks * cost->weigh_and_dissolve_s + cost->cleavage_s;
-    for (size_t i = 1; i < d->liquids; i++)
-        if (d->liquid[i].diluted) seconds += cost->dilution_s;
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++)
+        if (d->liquid[i].diluted && d->plan->dilution == DILUTION_FLASKS) seconds += cost->dilution_s;
     return seconds;
 }

@@ -8,23 +8,28 @@
 enum { STUDY_MAX_FRACTIONS = 2 };
 
 /* What to play: one design at one or two fractions on the same draws, its
- * notebooks reduced in each of the given ways. */
+ * notebooks reduced in each of the given ways. `measured`: a second polymer,
+ * which holds the second fraction, is measured alongside, and every estimate
+ * is the difference of the first's and the second's. */
 struct study_job {
     const struct design *design;
     uint64_t seed;
+    bool measured; /* takes two fractions */
     size_t fractions;
     double fraction[STUDY_MAX_FRACTIONS];
     size_t analyses;
     const struct analysis *analysis;
 };
 
-/* The bench work of LANES studies at one fraction. */
+/* The bench work of LANES studies at one fraction: totals over preparations
+ * and polymers. */
 struct study_bench {
     double clock_s[LANES], spare_runs[LANES];
 };
 
 /* A block's slot: for each fraction a study_bench, then for each fraction and
- * analysis a reduction_result. */
+ * analysis a reduction_result: the mean over preparations, [eta] and M those of
+ * the first polymer. */
 size_t study_slot_size(const struct study_job *job);
 const struct study_bench *study_bench_of(const struct study_job *job, const void *slot, size_t fraction);
 const struct reduction_result *study_result_of(const struct study_job *job, const void *slot, size_t fraction, size_t analysis);
@@ -36,9 +41,13 @@ size_t study_scratch_size(const struct study_job *job);
  * context is a const struct study_job. */
 void study_play(size_t block, const void *job, void *slot, void *scratch);
 
-/* Play one block and keep what the notebook of each lane says; `started_s`
- * [fillings] gets the clock at which each filling began. For the synthetic
- * notebook and the figures; fraction number 0. */
-void study_show(size_t block, const struct study_job *job, void *scratch, struct notebook *book, double (*started_s)[LANES]);
+/* Play one block's first polymer at fraction number 0, one of its preparations,
+ * and keep what the notebook of each lane says; `started_s` [fillings] gets the
+ * clock at which each filling began. For the synthetic notebook and figures. */
+struct study_shown {
+    struct notebook book;
+    double (*started_s)[LANES];
+};
+void study_show(size_t block, const struct study_job *job, unsigned preparation, void *scratch, struct study_shown *out);
 
 #endif

@@ -5,7 +5,13 @@
 #include "sim/bench/design.h"
 #include "sim/bench/draws.h"
 
-/* What is drawn once for a study, whatever its fraction. */
+/* Which of the polymers measured alongside (0 or 1), and which preparation. */
+struct truth_where {
+    unsigned polymer, preparation;
+};
+
+/* What is drawn once for a study, a polymer, a preparation, whatever the
+ * fraction. */
 struct truth_draws {
     double study[DRAWS_STUDY][LANES];
     double polymer[DRAWS_POLYMER][LANES];
@@ -13,14 +19,15 @@ struct truth_draws {
     double stock[SERIES][DRAWS_STOCK][LANES];
     double level[DESIGN_MAX_LIQUIDS][DRAWS_LEVEL][LANES];
 };
-void truth_draw(const struct design *d, const struct draws_key *key, struct truth_draws *out);
+void truth_draw(const struct design *d, const struct draws_key *key, struct truth_where where, struct truth_draws *out);
 
 struct truth {
     double kinetic[LANES];        /* E [m2 s] or B [m2] */
     double solution_slow[LANES];  /* 1 + o: every polymer solution against water */
     double calibration_K[LANES];  /* e_cal */
     double interaction[SERIES][LANES];
-    double conc_kg_m3[DESIGN_MAX_LIQUIDS][LANES]; /* as made */
+    double pipette_m3[LANES];     /* what the one pipette delivers too much */
+    double conc_kg_m3[DESIGN_MAX_LIQUIDS][LANES]; /* as made; in the tube only the top level's */
     double coil[DESIGN_MAX_LIQUIDS][LANES];       /* y = [eta] c as made, at the set temperature */
 };
 

@@ -10,6 +10,16 @@ double bar_level(const struct question *q)
     return q->sides == SIDES_TWO ? 0.5 * (1.0 + q->confidence) : q->confidence;
 }
 
+double bar_truth(const struct question *q)
+{
+    return q->against_is == AGAINST_MEASURED && q->has_against ? q->expect - q->against : q->expect;
+}
+
+double bar_null(const struct question *q)
+{
+    return q->against_is == AGAINST_MEASURED ? 0.0 : q->against;
+}
+
 static double turned(const struct question *q, double delta)
 {
     if (isnan(delta)) return -INFINITY;
@@ -68,7 +78,7 @@ double bar_power_se(const struct question *q, const struct bar_power *at, double
 double bar_share(const struct question *q, const double *expect, size_t n)
 {
     size_t inside = 0;
-    for (size_t i = 0; i < n; i++) inside += fabs(expect[i] - q->expect) <= q->within;
+    for (size_t i = 0; i < n; i++) inside += fabs(expect[i] - bar_truth(q)) <= q->within;
     return (double)inside / (double)n;
 }
 

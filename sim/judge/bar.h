@@ -17,6 +17,11 @@ enum verdict { VERDICT_OPEN, VERDICT_PASSES, VERDICT_FAILS };
  * it leaves for two sides. */
 double bar_level(const struct question *q);
 
+/* What the estimates are about under `expect` and under `against`: the fraction,
+ * or, with a second polymer measured alongside, the difference. */
+double bar_truth(const struct question *q);
+double bar_null(const struct question *q);
+
 /* What a power rests on, from n studies under both fractions on the same
  * draws. Values are turned so that `expect` lies above; 'no answer' counts as
  * not beyond. */

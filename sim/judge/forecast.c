@@ -27,7 +27,7 @@ static bool time_study(const struct scenario *s, size_t index, double *seconds)
     struct play play;
     *seconds = 0.0;
     scenario_plan(s, index, &plan);
-    bool ok = design_make(&design, &plan, scenario_cost(s), scenario_question(s)->expect);
+    bool ok = design_make(&design, &plan, scenario_cost(s), scenario_question(s));
     if (ok && !design_why(&design, &plan.analysis)) {
         play_start(&play, &design, scenario_seed(s));
         outcome_fractions(scenario_question(s), &play);

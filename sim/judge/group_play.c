@@ -85,7 +85,7 @@ bool group_play(const struct group_job *job, struct candidate *candidates, struc
     w.analysis = calloc(job->count, sizeof *w.analysis);
     bool ok = w.plan && w.analysis;
     for (size_t i = 0; ok && i < job->count; i++) scenario_plan(job->s, job->members[i], &w.plan[i]);
-    ok = ok && design_make(&w.design, &w.plan[0], scenario_cost(job->s), scenario_question(job->s)->expect);
+    ok = ok && design_make(&w.design, &w.plan[0], scenario_cost(job->s), scenario_question(job->s));
     if (ok) {
         play_start(&w.play, &w.design, scenario_seed(job->s));
         outcome_fractions(scenario_question(job->s), &w.play);

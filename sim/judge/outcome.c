@@ -36,7 +36,6 @@ static void nothing(struct figures *f)
 
 static void lay_facts(const struct design *d, struct outcome *out)
 {
-    out->truth = d->expect;
     out->water_efflux_s = d->liquid[DESIGN_WATER].nominal_s;
     for (size_t i = 1; i < d->liquids; i++) {
         const struct design_liquid *const q = &d->liquid[i];
@@ -50,7 +49,7 @@ static void lay_facts(const struct design *d, struct outcome *out)
         out->intrinsic[k] = (struct spread_of){d->chains.intrinsic_m3_kg[k], (double)NAN, (double)NAN};
         out->molar_mass[k] = (struct spread_of){d->chains.Mv_kg_mol[k], (double)NAN, (double)NAN};
     }
-    out->days = d->layout.days;
+    out->days = d->days;
     out->polymer_kg = d->polymer_kg;
 }
 
@@ -62,6 +61,7 @@ void outcome_nominal(const struct scenario *s, const struct plan *plan, const st
     out->status = STATUS_UNDECIDED;
     out->resolvable_against = out->resolvable_within = (double)NAN;
     out->margin_se = -INFINITY;
+    out->truth = bar_truth(scenario_question(s));
     lay_facts(design, out);
     const char *const why = design_why(design, &plan->analysis);
     if (why) {
@@ -163,7 +163,7 @@ static void plain_false_alarm(const struct question *q, const double *x, size_t 
     if (n < 2) return;
     const struct moments m = moments_of(x, n);
     const double z = gsl_cdf_ugaussian_Pinv(bar_level(q)), sign = q->expect > q->against ? 1.0 : -1.0;
-    const double edge = q->against + sign * z * m.sd, count = (double)all;
+    const double edge = bar_null(q) + sign * z * m.sd, count = (double)all;
     const double pull = m.sd > 0.0 ? moments_density(x, n, m.sd, edge) * z / (2.0 * m.sd) : 0.0;
     double sum = 0.0, sum2 = 0.0;
     for (size_t i = 0; i < n; i++) {
@@ -254,4 +254,5 @@ void outcome_fractions(const struct question *q, struct play *play)
 {
     play->fraction[play->fractions++] = q->expect;
     if (q->has_against) play->fraction[play->fractions++] = q->against;
+    play->measured = q->has_against && q->against_is == AGAINST_MEASURED;
 }

@@ -8,28 +8,25 @@
 struct shown {
     struct study_job job;
     void *scratch, *times_memory;
-    struct notebook book;
-    double (*started_s)[LANES];
+    struct study_shown study;
 };
 
-static bool show(const struct scenario *s, const struct design *d, size_t study, struct shown *out)
+static bool prepare(const struct scenario *s, const struct design *d, struct shown *out)
 {
     memset(out, 0, sizeof *out);
     out->job = (struct study_job){.design = d, .seed = scenario_seed(s), .fractions = 1, .fraction = {scenario_question(s)->expect},
                                   .analyses = 1, .analysis = &d->plan->analysis};
     out->scratch = aligned_alloc(64, (study_scratch_size(&out->job) + 63) / 64 * 64);
     out->times_memory = malloc(reduction_size(&d->layout));
-    out->started_s = malloc(d->layout.fillings * sizeof *out->started_s);
-    if (!out->scratch || !out->times_memory || !out->started_s) return false;
-    study_show(study / LANES, &out->job, out->scratch, &out->book, out->started_s);
-    return true;
+    out->study.started_s = malloc(d->layout.fillings * sizeof *out->study.started_s);
+    return out->scratch && out->times_memory && out->study.started_s;
 }
 
 static void forget(struct shown *s)
 {
     free(s->scratch);
     free(s->times_memory);
-    free(s->started_s);
+    free(s->study.started_s);
 }
 
 static void reduce_example(const struct design *d, const struct shown *shown, int lane, struct example *out)
@@ -38,9 +35,9 @@ static void reduce_example(const struct design *d, const struct shown *shown, in
     struct reduction_times times = reduction_place(&d->layout, shown->times_memory);
     struct reduction_levels levels;
     struct reduction_result result;
-    reduction_combine(&d->assumed, &shown->book, &times);
-    reduction_relative(&d->assumed, how, &shown->book, &times, &levels);
-    reduction_run(&d->assumed, how, &shown->book, &times, &result);
+    reduction_combine(&d->assumed, &shown->study.book, &times);
+    reduction_relative(&d->assumed, how, &shown->study.book, &times, &levels);
+    reduction_run(&d->assumed, how, &shown->study.book, &times, &result);
     out->estimate = result.delta[lane];
     for (size_t s = 0; s < SERIES; s++) {
         double relative[ASSUMED_MAX_LEVELS];
@@ -63,9 +60,10 @@ bool show_example(const struct scenario *s, const struct plan *plan, size_t stud
     struct design design;
     struct shown shown = {0};
     memset(out, 0, sizeof *out);
-    bool ok = design_make(&design, plan, scenario_cost(s), scenario_question(s)->expect);
+    bool ok = design_make(&design, plan, scenario_cost(s), scenario_question(s));
     if (ok && !design_why(&design, &plan->analysis)) {
-        ok = show(s, &design, study, &shown);
+        ok = prepare(s, &design, &shown);
+        if (ok) study_show(study / LANES, &shown.job, 0, shown.scratch, &shown.study);
         if (ok) reduce_example(&design, &shown, (int)(study % LANES), out);
         forget(&shown);
     }
@@ -73,16 +71,17 @@ bool show_example(const struct scenario *s, const struct plan *plan, size_t stud
     return ok;
 }
 
-static void list_runs(const struct design *d, const struct shown *shown, int lane, struct show_notebook *out)
+static void list_runs(const struct design *d, const struct shown *shown, int lane, unsigned preparation, struct show_notebook *out)
 {
     const struct habits *const h = &d->plan->habits;
     for (size_t f = 0; f < d->layout.fillings; f++) {
         const struct design_liquid *const q = &d->liquid[design_liquid_of(d, &d->filling[f])];
-        const struct notebook_run *const run = notebook_runs(&shown->book, f);
-        const double first_s = shown->started_s[f][lane] + h->clean_and_fill_s + h->equilibrate_s;
-        for (size_t r = 0; r < shown->book.made[f][lane]; r++)
+        const struct notebook_run *const run = notebook_runs(&shown->study.book, f);
+        const double before_s = d->filling[f].added ? h->add_and_mix_s : h->clean_and_fill_s;
+        const double first_s = shown->study.started_s[f][lane] + before_s + h->equilibrate_s;
+        for (size_t r = 0; r < shown->study.book.made[f][lane]; r++)
             out->run[out->runs++] = (struct show_run){
-                .filling = &d->filling[f], .run = r, .started_s = first_s + (double)r * (q->nominal_s + h->reset_s), .time_s = run[r].time_s[lane],
+                .preparation = preparation, .filling = &d->filling[f], .run = r, .started_s = first_s + (double)r * (q->nominal_s + h->reset_s), .time_s = run[r].time_s[lane],
                 .read_K = d->assumed.record ? run[r].read_K[lane] : (double)NAN, .conc_kg_m3 = q->conc_kg_m3};
     }
 }
@@ -91,12 +90,15 @@ bool show_notebook_make(const struct scenario *s, const struct plan *plan, size_
 {
     struct shown shown = {0};
     memset(out, 0, sizeof *out);
-    bool ok = design_make(&out->design, plan, scenario_cost(s), scenario_question(s)->expect);
+    bool ok = design_make(&out->design, plan, scenario_cost(s), scenario_question(s));
     if (ok && !design_why(&out->design, &plan->analysis)) {
         const struct notebook_layout *const layout = &out->design.layout;
-        out->run = calloc(layout->fillings * layout->stride, sizeof *out->run);
-        ok = out->run && show(s, &out->design, study, &shown);
-        if (ok) list_runs(&out->design, &shown, (int)(study % LANES), out);
+        out->run = calloc(layout->fillings * layout->stride * plan->preparations, sizeof *out->run);
+        ok = out->run && prepare(s, &out->design, &shown);
+        for (unsigned i = 0; ok && i < plan->preparations; i++) {
+            study_show(study / LANES, &shown.job, i, shown.scratch, &shown.study);
+            list_runs(&out->design, &shown, (int)(study % LANES), i, out);
+        }
         forget(&shown);
     }
     return ok;

@@ -4,11 +4,13 @@
 
 #include "sim/judge/trial.h"
 
-/* One synthetic study, by number. False: out of memory. */
+/* One synthetic study (its first preparation), by number. False: out of memory. */
 bool show_example(const struct scenario *s, const struct plan *plan, size_t study, struct example *out);
 
-/* The notebook of one synthetic study, run by run in the order of the bench. */
+/* The notebook of one synthetic study, run by run in the order of the bench,
+ * preparation by preparation; of the first polymer. */
 struct show_run {
+    unsigned preparation; /* from 0 */
     const struct notebook_filling *filling;
     size_t run;       /* from 0 */
     double started_s; /* clock of its day */

@@ -14,7 +14,8 @@ static void one_analysis(struct play *p, const struct analysis *how)
 }
 
 /* Power against another fraction than the question's, on the same draws;
- * below 0: out of memory. */
+ * below 0: out of memory. With a second polymer measured alongside, what it
+ * holds changes the differences under both. */
 static double power_against(const struct scenario *s, const struct play *base, double against)
 {
     struct question q = *scenario_question(s);
@@ -23,9 +24,13 @@ static double power_against(const struct scenario *s, const struct play *base, d
     q.against = against;
     play_start(&p, base->design, base->seed);
     p.first_block = base->first_block;
+    p.measured = base->measured;
+    if (p.measured) p.fraction[p.fractions++] = q.expect;
     p.fraction[p.fractions++] = against;
     one_analysis(&p, &base->analysis[0]);
-    const bool ok = play_until(&p, base->n) && bar_power_of(&q, base->sample[0].delta[0], p.sample[0].delta[0], base->n, &power);
+    const bool played = play_until(&p, base->n);
+    const double *const expect = p.measured ? p.sample[0].delta[0] : base->sample[0].delta[0];
+    const bool ok = played && bar_power_of(&q, expect, p.sample[0].delta[p.fractions - 1], base->n, &power);
     play_free(&p);
     return ok ? power.power : -1.0;
 }
@@ -73,7 +78,7 @@ static bool resolvable_within(const struct question *q, const double *expect, si
 {
     double *const error = malloc(n * sizeof *error);
     if (!error) return false;
-    for (size_t i = 0; i < n; i++) error[i] = isnan(expect[i]) ? (double)INFINITY : fabs(expect[i] - q->expect);
+    for (size_t i = 0; i < n; i++) error[i] = isnan(expect[i]) ? (double)INFINITY : fabs(expect[i] - bar_truth(q));
     moments_sort(error, n);
     const double at = moments_quantile(error, n, q->confidence);
     *out = isfinite(at) ? at : (double)NAN;
@@ -124,7 +129,7 @@ bool trial_run(const struct scenario *s, const struct plan *plan, struct trial_o
 {
     struct design design;
     if (estimates) *estimates = (struct estimates){0};
-    bool ok = design_make(&design, plan, scenario_cost(s), scenario_question(s)->expect);
+    bool ok = design_make(&design, plan, scenario_cost(s), scenario_question(s));
     if (ok) {
         outcome_nominal(s, plan, &design, out);
         if (out->status == STATUS_UNDECIDED) ok = play_plan(s, &design, &options, out, estimates);
@@ -164,10 +169,10 @@ bool trial_too_narrow(const struct scenario *s, const struct plan *plan, bool *t
     const struct plan bare = without_spreads(plan);
     struct design design;
     struct play p;
-    bool ok = design_make(&design, &bare, scenario_cost(s), q->expect);
+    bool ok = design_make(&design, &bare, scenario_cost(s), q);
     if (ok && !design_why(&design, &bare.analysis)) {
         play_start(&p, &design, scenario_seed(s));
-        p.fraction[p.fractions++] = q->expect;
+        outcome_fractions(q, &p);
         one_analysis(&p, &bare.analysis);
         ok = play_until(&p, scenario_studies(s));
         if (ok) *too_narrow = bar_share(q, p.sample[0].delta[0], p.n) < q->confidence;

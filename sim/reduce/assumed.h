@@ -25,6 +25,7 @@ struct assumed {
     /* tube */
     enum tube_ends ends;
     double kinetic; /* E [m2 s] or B [m2] */
+    bool blank_reference; /* the blank's time is t_0 of the cleaved series */
     /* solutions: nominal concentrations and density over that of water */
     size_t levels[SERIES];
     double conc_kg_m3[SERIES][ASSUMED_MAX_LEVELS];

@@ -8,9 +8,11 @@
 
 enum { NOTEBOOK_MAX_RUNS = 24 }; /* of one filling, spare ones included */
 
-/* One filling as planned. Series, level, number and day count from 0. */
+/* One filling as planned: of water, of the blank, or of a level. Series, level,
+ * number and day count from 0. In the tube a loading is a row of fillings, each
+ * but the first made by adding solvent to what is there. */
 struct notebook_filling {
-    bool water;
+    bool water, blank, added;
     size_t series, level, number, day;
     size_t runs;
 };

@@ -5,31 +5,43 @@
 
 size_t reduction_size(const struct notebook_layout *layout)
 {
-    return (layout->fillings + layout->days) * sizeof(double[LANES]);
+    return (layout->fillings + 2 * layout->days) * sizeof(double[LANES]);
 }
 
 struct reduction_times reduction_place(const struct notebook_layout *layout, void *memory)
 {
     double(*const rows)[LANES] = memory;
-    return (struct reduction_times){rows, rows + layout->fillings};
+    return (struct reduction_times){rows, rows + layout->fillings, rows + layout->fillings + layout->days};
+}
+
+/* One more value into a running mean of `count` so far. */
+static void average(double mean[LANES], const double value[LANES], double count)
+{
+    FOR_LANES(l) mean[l] += (value[l] - mean[l]) / (count + 1.0);
+}
+
+/* Days without one of their own take the first that was measured. */
+static void share(double (*mean)[LANES], size_t days)
+{
+    size_t first = 0;
+    while (first < days && mean[first][0] == 0.0) first++;
+    for (size_t d = 0; d < days && first < days; d++)
+        if (mean[d][0] == 0.0) memcpy(mean[d], mean[first], sizeof mean[d]);
 }
 
 void reduction_combine(const struct assumed *a, const struct notebook *book, struct reduction_times *times)
 {
     const struct notebook_layout *const layout = book->layout;
-    size_t day = 0, waters = 0;
-    for (size_t d = 0; d < layout->days; d++) memset(times->water_s[d], 0, sizeof times->water_s[d]);
+    memset(times->water_s, 0, layout->days * sizeof *times->water_s);
+    memset(times->blank_s, 0, layout->days * sizeof *times->blank_s);
     for (size_t f = 0; f < layout->fillings; f++) {
-        notebook_filling_time(a, book, f, times->filling_s[f]);
         const struct notebook_filling *const filling = &layout->filling[f];
-        if (!filling->water) continue;
-        waters = filling->day == day ? waters + 1 : 1;
-        day = filling->day;
-        const double weight = 1.0 / (double)waters; /* running mean */
-        FOR_LANES(l) times->water_s[day][l] += (times->filling_s[f][l] - times->water_s[day][l]) * weight;
+        notebook_filling_time(a, book, f, times->filling_s[f]);
+        if (filling->water) average(times->water_s[filling->day], times->filling_s[f], (double)filling->number);
+        if (filling->blank) average(times->blank_s[filling->day], times->filling_s[f], (double)filling->number);
     }
-    for (size_t d = 1; d < layout->days; d++)
-        if (times->water_s[d][0] == 0.0) memcpy(times->water_s[d], times->water_s[0], sizeof times->water_s[d]);
+    share(times->water_s, layout->days);
+    share(times->blank_s, layout->days);
 }
 
 LANES_WIDE void reduction_relative(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
@@ -40,17 +52,21 @@ LANES_WIDE void reduction_relative(const struct assumed *a, const struct analysi
     memset(out, 0, sizeof *out);
     for (size_t f = 0; f < book->layout->fillings; f++) {
         const struct notebook_filling *const filling = &book->layout->filling[f];
-        if (filling->water) continue;
+        if (filling->water || filling->blank) continue;
         const double density = how->density_corrected ? a->density_ratio[filling->series][filling->level] : 1.0;
+        const bool blank = a->blank_reference && filling->series == CLEAVED;
         const double *const t = times->filling_s[f], *const t0 = times->water_s[filling->day];
         double *const sum = out->relative[filling->series][filling->level];
+        double reference[LANES], constant[LANES];
         count[filling->series][filling->level] += 1.0;
         FOR_LANES(l)
         {
             /* C t0 - k(t0) is nu_w itself */
-            const double C = (a->water_m2_s + tube_kinetic(a->ends, kinetic, t0[l])) / t0[l];
-            sum[l] += tube_viscosity(C, a->ends, kinetic, t[l]) * density / a->water_m2_s;
+            constant[l] = (a->water_m2_s + tube_kinetic(a->ends, kinetic, t0[l])) / t0[l];
+            reference[l] = a->water_m2_s;
         }
+        if (blank) FOR_LANES(l) reference[l] = tube_viscosity(constant[l], a->ends, kinetic, times->blank_s[filling->day][l]);
+        FOR_LANES(l) sum[l] += tube_viscosity(constant[l], a->ends, kinetic, t[l]) * density / reference[l];
     }
     for (size_t s = 0; s < SERIES; s++)
         for (size_t j = 0; j < a->levels[s]; j++) FOR_LANES(l) out->relative[s][j][l] /= count[s][j];

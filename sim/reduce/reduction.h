@@ -5,25 +5,27 @@
 #include "sim/reduce/line.h"
 #include "sim/reduce/notebook.h"
 
-/* What every way of reducing starts from: the time of each filling, and of
- * each filling its day's water, lane by lane [s]. */
+/* What every way of reducing starts from: the time of each filling, and each
+ * day's means over its water and blank fillings, lane by lane [s]. */
 struct reduction_times {
     double (*filling_s)[LANES]; /* [fillings] */
-    double (*water_s)[LANES];   /* [days] mean over the day's water fillings */
+    double (*water_s)[LANES];   /* [days] */
+    double (*blank_s)[LANES];   /* [days] zero where there is none */
 };
 size_t reduction_size(const struct notebook_layout *layout);
 struct reduction_times reduction_place(const struct notebook_layout *layout, void *memory);
 
 /* Steps 1 and 2: bring to the set temperature (done run by run on entry), keep
- * the best runs, combine them, and average the water of each day; a day
- * without water of its own takes the first day's. */
+ * the best runs, combine them, and average the water (and blank) of each day;
+ * a day without water (blank) of its own takes the first that was measured. */
 void reduction_combine(const struct assumed *a, const struct notebook *book, struct reduction_times *times);
 
 /* Relative viscosity of every level, lane by lane. */
 struct reduction_levels {
     double relative[SERIES][ASSUMED_MAX_LEVELS][LANES];
 };
-/* Step 3: C from the day's water, then eta_r filling by filling. */
+/* Step 3: C from the day's water, then eta_r filling by filling, against the
+ * water or, for the cleaved series, the blank with the same C. */
 void reduction_relative(const struct assumed *a, const struct analysis *how, const struct notebook *book, const struct reduction_times *times,
                         struct reduction_levels *out);
 

@@ -29,6 +29,8 @@ static void comment(FILE *to, const char *label, const char *text)
 
 static void line(FILE *to, const struct notebook_csv *n, const struct notebook_row *row)
 {
+    if (n->preparations)
+        fprintf(to, "%zu,", row->preparation);
     const unsigned long minutes = (unsigned long)floor(say_minutes(row->started_s));
     fprintf(to, "%zu,%lu:%02lu,%s,", row->day, minutes / 60, minutes % 60, row->solution);
     if (row->level > 0)
@@ -50,6 +52,8 @@ void notebook_csv_print(FILE *to, const struct notebook_csv *notebook)
     comment(to, "", notebook->title);
     comment(to, "Plan: ", notebook->plan);
     comment(to, "", "Invented times: a simulated study, nothing here was measured.");
+    if (notebook->preparations)
+        fputs("preparation,", to);
     fputs("day,started,solution,level,concentration [g/dL],filling,run,time [s],temperature [degC],note\n", to);
     for (size_t i = 0; i < notebook->count; i++)
         line(to, notebook, &notebook->rows[i]);

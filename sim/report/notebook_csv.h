@@ -7,9 +7,10 @@
 /* One run at the bench. Fillings, levels, runs and days count from 1; level 0
  * and concentration NaN for water. */
 struct notebook_row {
+    size_t preparation; /* from 1 */
     size_t day;
     double started_s;     /* the day's clock when the run begins */
-    const char *solution; /* "water", "intact", "cleaved" */
+    const char *solution; /* "water", "blank", "intact", "cleaved" */
     size_t level;
     double concentration_kg_m3; /* nominal; NaN: left empty */
     size_t filling, run;
@@ -22,6 +23,7 @@ struct notebook_csv {
     double timer_resolution_s, thermometer_resolution_K; /* 0: none */
     const struct notebook_row *rows;
     size_t count;
+    bool preparations; /* there are several: a column of their own comes first */
 };
 
 /* Comment lines, a heading with units, a line per run. Times and temperatures

@@ -23,8 +23,8 @@ static struct notebook_row row_of(const struct show_run *run)
 {
     const struct notebook_filling *const f = run->filling;
     return (struct notebook_row){
-        .day = f->day + 1, .started_s = run->started_s, .solution = f->water ? "water" : f->series == INTACT ? "intact" : "cleaved",
-        .level = f->water ? 0 : f->level + 1, .concentration_kg_m3 = f->water ? (double)NAN : run->conc_kg_m3, .filling = f->number + 1,
+        .preparation = run->preparation + 1, .day = f->day + 1, .started_s = run->started_s, .solution = f->water ? "water" : f->blank ? "blank" : f->series == INTACT ? "intact" : "cleaved",
+        .level = f->water || f->blank ? 0 : f->level + 1, .concentration_kg_m3 = f->water || f->blank ? (double)NAN : run->conc_kg_m3, .filling = f->number + 1,
         .run = run->run + 1, .time_s = run->time_s, .temperature_K = run->read_K};
 }
 
@@ -44,7 +44,7 @@ static bool write_one(const struct report_context *context, const struct plan *p
         char words[200];
         snprintf(words, sizeof words, "%s in %s, %s, %s, %s; simulated study %zu", plan->grade.name, plan->tube.name, plan->bath.name,
                  plan->thermometer.name, plan->timer.name, study + 1);
-        const struct notebook_csv csv = {scenario_title(context->scenario), words, plan->timer.resolution_s, plan->thermometer.resolution_K, rows, notebook.runs};
+        const struct notebook_csv csv = {scenario_title(context->scenario), words, plan->timer.resolution_s, plan->thermometer.resolution_K, rows, notebook.runs, plan->preparations > 1};
         good = notebook_csv_write(path, &csv, failure);
     }
     free(rows);

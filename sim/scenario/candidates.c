@@ -34,6 +34,7 @@ static size_t candidates_key(const struct scenario *s, const char *key)
 bool candidates_count(struct scenario *s)
 {
     s->extrapolation = candidates_key(s, "extrapolation");
+    s->material = candidates_key(s, "material");
     s->grade = candidates_key(s, "grade");
     s->tube = candidates_key(s, "tube");
     s->candidates = 1;
@@ -73,9 +74,6 @@ void candidates_options(const struct scenario *s, size_t index, size_t option[PA
 static void candidates_entry(const struct keys_row *row, const struct record *entry, struct plan *out)
 {
     switch (keys_entry_kind(row)) {
-    case KEYS_GRADES:
-        record_compile(entry, &out->grade), out->grade.name = entry->name;
-        break;
     case KEYS_TUBES:
         record_compile(entry, &out->tube), out->tube.name = entry->name;
         break;
@@ -88,8 +86,7 @@ static void candidates_entry(const struct keys_row *row, const struct record *en
     case KEYS_TIMERS:
         record_compile(entry, &out->timer), out->timer.name = entry->name;
         break;
-    default:
-        out->material.name = entry->name;
+    default: /* grade and material: candidates_polymer */
         break;
     }
 }
@@ -115,13 +112,50 @@ static void candidates_kinetic(const struct record *entry, struct tube *tube)
         tube->kinetic = tube_kinetic_square(tube->bulb_volume_m3, tube->length_m);
 }
 
+/* Grade and material by their options, and the hydrolysis that then holds. */
+static void candidates_polymer(const struct scenario *s, const size_t option[PARTS_PLAN_KEYS], struct plan *out)
+{
+    const struct choice *materials = &s->choices[s->material];
+    const struct record *grade = s->choices[s->grade].options[option[s->grade]].entry;
+    const struct record *material = materials->options[option[s->material]].entry;
+    record_compile(s->sections[KEYS_POLYMER], &out->material);
+    if (materials->count > 1)
+        record_compile(material, &out->material);
+    out->material.name = material->name;
+    record_compile(grade, &out->grade);
+    out->grade.name = grade->name;
+    candidates_hydrolysis(s->sections[KEYS_POLYMER], grade, &out->material);
+    if (s->question.against_is == AGAINST_SAME_CONSTANTS)
+        out->material.eta_u = out->material.a_u = 0.0;
+}
+
+bool candidates_make_chains(struct scenario *s)
+{
+    const size_t materials = s->choices[s->material].count, grades = s->choices[s->grade].count;
+    s->chains = arena_take(s->arena, materials * grades, sizeof *s->chains);
+    bool good = s->chains;
+    for (size_t i = 0; good && i < materials * grades; i++) {
+        size_t option[PARTS_PLAN_KEYS] = {0};
+        struct plan plan = {0};
+        option[s->material] = i / grades;
+        option[s->grade] = i % grades;
+        candidates_polymer(s, option, &plan);
+        const struct material *m = &plan.material;
+        const double unit = polymer_unit_kg_mol(m->hydrolysis, m->repeat_unit_kg_mol, m->ester_unit_kg_mol);
+        const struct chains_shape shape = {plan.grade.distribution, plan.grade.dispersity, plan.grade.average,
+                                           plan.grade.molar_mass_kg_mol / unit};
+        good = chains_make(&s->chains[i], shape, m->a);
+    }
+    return good;
+}
+
 void candidates_plan(const struct scenario *s, size_t index, struct plan *out)
 {
     size_t option[PARTS_PLAN_KEYS];
     candidates_options(s, index, option);
     memset(out, 0, sizeof *out);
     out->index = index;
-    record_compile(s->sections[KEYS_POLYMER], &out->material);
+    out->seed = s->run.seed;
     record_compile(s->sections[KEYS_CLEAVAGE], &out->cleavage);
     record_compile(s->sections[KEYS_SOLUTIONS], &out->solutions);
     record_compile(s->sections[KEYS_BENCH], &out->habits);
@@ -136,9 +170,7 @@ void candidates_plan(const struct scenario *s, size_t index, struct plan *out)
         out->levels[CLEAVED] = out->levels[INTACT];
     if (!out->fillings[CLEAVED])
         out->fillings[CLEAVED] = out->fillings[INTACT];
-    candidates_hydrolysis(s->sections[KEYS_POLYMER], s->choices[s->grade].options[option[s->grade]].entry,
-                          &out->material);
+    candidates_polymer(s, option, out);
+    out->chains = &s->chains[option[s->material] * s->choices[s->grade].count + option[s->grade]];
     candidates_kinetic(s->choices[s->tube].options[option[s->tube]].entry, &out->tube);
-    if (s->question.against_is == AGAINST_SAME_CONSTANTS)
-        out->material.eta_u = out->material.a_u = 0.0;
 }

@@ -15,6 +15,10 @@ bool candidates_count(struct scenario *s);
 /* Which option of every key candidate `index` takes. */
 void candidates_options(const struct scenario *s, size_t index, size_t option[PARTS_PLAN_KEYS]);
 
+/* Works out the chain lengths of every grade with every material, which the
+ * plans then point to. False: out of memory. */
+bool candidates_make_chains(struct scenario *s);
+
 /* Candidate `index`, in SI units. */
 void candidates_plan(const struct scenario *s, size_t index, struct plan *out);
 

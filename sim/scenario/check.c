@@ -55,9 +55,41 @@ static void check_tube(const struct reading *r, const struct record *tube)
 
 static void check_grade(const struct reading *r, const struct record *grade)
 {
-    const struct value *d = record_value(grade, "dispersity");
-    if (d->state == VALUE_GOOD && fabs(d->number - 2.0) > 1e-9)
-        complain_at(r->out, d->place, "`dispersity` is %s; most-probable chains have 2 and no other", d->text);
+    const struct value *d = record_value(grade, "dispersity"), *kind = record_value(grade, "distribution");
+    const bool given = d->state == VALUE_GOOD;
+    if (kind->state != VALUE_GOOD)
+        return;
+    switch ((enum chains_kind)kind->number) {
+    case CHAINS_MOST_PROBABLE:
+        if (given && fabs(d->number - 2.0) > 1e-9)
+            complain_at(r->out, d->place, "`dispersity` is %s; most-probable chains have 2 and no other", d->text);
+        break;
+    case CHAINS_UNIFORM:
+        if (given && fabs(d->number - 1.0) > 1e-9)
+            complain_at(r->out, d->place, "`dispersity` is %s; uniform chains have 1 and no other", d->text);
+        break;
+    default:
+        if (!given)
+            complain_at(r->out, kind->place, "`distribution: %s` needs a `dispersity`, for example 1.8", kind->text);
+        else if (d->number < 1.001)
+            complain_at(r->out, d->place, "`dispersity` is %s; with %s it must be at least 1.001", d->text, kind->text);
+        break;
+    }
+}
+
+/* With several materials each brings its own values. */
+static void check_materials(const struct reading *r, const struct scenario *s)
+{
+    const struct keys_section *own = keys_section(KEYS_MATERIALS);
+    const struct record *polymer = s->sections[KEYS_POLYMER];
+    if (choices_find(s, "material")->count < 2)
+        return;
+    for (size_t i = 0; i < keys_count(polymer->section); i++) {
+        const char *key = keys_row(polymer->section, i)->key;
+        if (polymer->values[i].own && strcmp(key, "material") != 0 && keys_find(own, key) < keys_count(own))
+            complain_at(r->out, polymer->values[i].place,
+                        "`%s` is given here, but plan.material has more than one; give it in kit.materials", key);
+    }
 }
 
 static void check_kit(const struct reading *r, const struct kit *kit)
@@ -147,6 +179,7 @@ void check_scenario(const struct reading *r, const struct scenario *s)
     check_below(r, s->sections[KEYS_POLYMER], "valid_from", "valid_to", false);
     check_flask(r, s->sections[KEYS_SOLUTIONS], "stock_volume", "stock_tolerance");
     check_flask(r, s->sections[KEYS_SOLUTIONS], "level_volume", "level_tolerance");
+    check_materials(r, s);
     check_levels(r, s);
     check_owned(r, s);
 }

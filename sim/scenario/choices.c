@@ -78,15 +78,14 @@ static void choices_material(const struct reading *r, struct scenario *s)
 {
     struct choice *choice = &s->choices[keys_find(keys_section(KEYS_PLAN), "material")];
     struct value *polymer = record_value(s->sections[KEYS_POLYMER], "material");
-    if (choice->count > 1)
-        complain_at(r->out, choice->place, "more than one material in plan.material is not in this version");
+    const bool several = choice->count > 1;
     if (choice->count == 0) {
         if (!choices_reserve(r, choice, 1))
             return;
         choice->options[choice->count++] =
             polymer->state == VALUE_ABSENT ? value_default(r, keys_polymer_head) : *polymer;
         kit_resolve(r, &s->kit, KEYS_MATERIALS, &choice->options[0]);
-    } else if (polymer->own && polymer->state == VALUE_GOOD && strcmp(polymer->text, choice->options[0].text) != 0)
+    } else if (!several && polymer->own && polymer->state == VALUE_GOOD && strcmp(polymer->text, choice->options[0].text) != 0)
         complain_at(r->out, choice->options[0].place, "`material` is %s here and %s in polymer",
                     choice->options[0].text, polymer->text);
     *polymer = choice->options[0];

@@ -78,7 +78,7 @@ const struct keys_row keys_bench_rows[] = {
      .help = "hands-on, for each filling", .source = KEYS_PRACTICE, KEYS_INTO(struct habits, clean_and_fill_s)},
     {.key = "add_and_mix", .kind = KEYS_QUANTITY, .dimension = UNITS_TIME, .unit = "min", .min = 0, .max = 300,
      .fallback = "3 min",
-     .help = "dilution in the tube", .source = KEYS_PRACTICE},
+     .help = "for each dilution in the tube", .source = KEYS_PRACTICE, KEYS_INTO(struct habits, add_and_mix_s)},
     {.key = "reset", .kind = KEYS_QUANTITY, .dimension = UNITS_TIME, .unit = "s", .min = 0, .max = 3600,
      .fallback = "60 s",
      .help = "drawing the liquid up again, after each run", .source = KEYS_PRACTICE,

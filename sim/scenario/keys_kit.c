@@ -5,7 +5,8 @@
 static const struct keys_word averages[] = {
     {"viscosity", AVERAGE_VISCOSITY, false}, {"weight", AVERAGE_WEIGHT, false}, {"number", AVERAGE_NUMBER, false}, {0}};
 static const struct keys_word distributions[] = {
-    {"most-probable", 0, false}, {"schulz-zimm", 1, true}, {"log-normal", 2, true}, {"uniform", 3, true}, {0}};
+    {"most-probable", CHAINS_MOST_PROBABLE, false}, {"schulz-zimm", CHAINS_SCHULZ_ZIMM, false},
+    {"log-normal", CHAINS_LOG_NORMAL, false}, {"uniform", CHAINS_UNIFORM, false}, {0}};
 static const struct keys_word types[] = {{"suspended-level", true, false}, {"constant-volume", false, false}, {0}};
 static const struct keys_word ends[] = {{"flared", TUBE_FLARED, false}, {"square", TUBE_SQUARE, false}, {0}};
 static const struct keys_word reads[] = {
@@ -33,11 +34,12 @@ const struct keys_row keys_kit_grades[] = {
     {.key = "average", .kind = KEYS_CHOICE, .unit = "", .words = averages, .fallback = "viscosity",
      .help = "which average that is", .source = KEYS_PRACTICE, KEYS_INTO(struct grade, average)},
     {.key = "distribution", .kind = KEYS_CHOICE, .unit = "", .words = distributions, .fallback = "most-probable",
-     .help = "of the chain lengths", .source = "free-radical polymerisation"},
-    {.key = "dispersity", .kind = KEYS_QUANTITY, .dimension = UNITS_PLAIN, .unit = "", .min = 1, .max = 50,
-     .none = "2 with most-probable",
-     .help = "weight over number average; most-probable chains have 2 and no other",
-     .source = "Flory and Leutner 1948: Mv/Mn = 1.89 is this at a = 0.76"},
+     .help = "of the chain lengths, by number", .source = "free-radical polymerisation",
+     KEYS_INTO(struct grade, distribution)},
+    {.key = "dispersity", .kind = KEYS_QUANTITY, .dimension = UNITS_PLAIN, .unit = "", .min = 1,
+     .max = 2.5, .none = "2 with most-probable, 1 with uniform; must be given with the others",
+     .help = "weight over number average", .source = "Flory and Leutner 1948: Mv/Mn = 1.89 is 2 at a = 0.76",
+     KEYS_INTO(struct grade, dispersity)},
     {.key = "hydrolysis", .kind = KEYS_QUANTITY, .dimension = UNITS_FRACTION, .unit = "%", .min = 50, .max = 100,
      .none = "the material's",
      .help = "where the grade has its own; one given in `polymer` wins", .source = "yours"},

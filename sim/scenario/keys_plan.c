@@ -4,8 +4,11 @@
 
 static const struct keys_word records[] = {{"each-run", true, false}, {"none", false, false}, {0}};
 static const struct keys_word same[] = {{"same", 0, false}, {0}};
-static const struct keys_word dilutions[] = {{"flasks", 0, false}, {"in-tube", 1, true}, {0}};
-static const struct keys_word orders[] = {{"sequential", 0, false}, {"shuffled", 1, true}, {"bracketed", 2, true}, {0}};
+static const struct keys_word dilutions[] = {{"flasks", DILUTION_FLASKS, false}, {"in-tube", DILUTION_IN_TUBE, false}, {0}};
+static const struct keys_word orders[] = {{"sequential", ORDER_SEQUENTIAL, false},
+                                          {"shuffled", ORDER_SHUFFLED, false},
+                                          {"bracketed", ORDER_BRACKETED, false},
+                                          {0}};
 static const struct keys_word extrapolations[] = {{"huggins", HUGGINS, false},
                                                   {"kraemer", KRAEMER, false},
                                                   {"martin", MARTIN, false},
@@ -55,9 +58,12 @@ const struct keys_row keys_plan_rows[] = {
      .fallback = "same",
      .help = "of the cleaved series", .source = KEYS_PRACTICE, KEYS_INTO(struct plan, levels[CLEAVED])},
     {.key = "dilution", .kind = KEYS_CHOICE, .unit = "", .words = dilutions, .fallback = "flasks",
-     .help = "where the levels are made", .source = KEYS_PRACTICE},
-    {.key = "preparations", .kind = KEYS_COUNT, .unit = "", .min = 1, .max = 1, .later_max = 12, .fallback = "1",
-     .help = "how often the whole study is done", .source = KEYS_PRACTICE},
+     .help = "levels in flasks, or by adding solvent to the loading of a suspended-level tube", .source = KEYS_PRACTICE,
+     KEYS_INTO(struct plan, dilution)},
+    {.key = "preparations", .kind = KEYS_COUNT, .unit = "", .min = 1, .max = PLAN_MAX_PREPARATIONS,
+     .fallback = "1",
+     .help = "how often the whole study is done, from the balance on", .source = KEYS_PRACTICE,
+     KEYS_INTO(struct plan, preparations)},
     {.key = "fillings", .kind = KEYS_COUNT, .unit = "", .min = 1, .max = PLAN_MAX_FILLINGS, .fallback = "2",
      .help = "of each level", .source = KEYS_PRACTICE, KEYS_INTO(struct plan, fillings[INTACT])},
     {.key = "fillings_cleaved", .kind = KEYS_COUNT, .unit = "", .min = 1, .max = PLAN_MAX_FILLINGS, .words = same,
@@ -71,7 +77,9 @@ const struct keys_row keys_plan_rows[] = {
     {.key = "water_runs", .kind = KEYS_COUNT, .unit = "", .min = 1, .max = PLAN_MAX_RUNS, .fallback = "3",
      .help = "of each of them", .source = KEYS_PRACTICE, KEYS_INTO(struct plan, water_runs)},
     {.key = "order", .kind = KEYS_CHOICE, .unit = "", .words = orders, .fallback = "sequential",
-     .help = "of the fillings: water, intact, cleaved, each from dilute to concentrated", .source = KEYS_PRACTICE},
+     .help = "of the fillings: water, intact, cleaved, each from dilute to concentrated; dealt once; or with half of "
+             "each day's water at its end",
+     .source = KEYS_PRACTICE, KEYS_INTO(struct plan, order)},
     {.key = "extrapolation", .kind = KEYS_CHOICE, .unit = "", .words = extrapolations, .fallback = "martin",
      .help = "how [eta] is found from the levels", .source = KEYS_PRACTICE,
      KEYS_INTO(struct plan, analysis.extrapolation)},

@@ -9,7 +9,7 @@ static const struct keys_word averages[] = {
 static const struct keys_word laws[] = {{"martin", SOLUTION_MARTIN, false}, {"huggins", SOLUTION_HUGGINS, false}, {0}};
 static const struct keys_word neighbours[] = {
     {"excluded", NEIGHBOURS_EXCLUDED, false}, {"independent", NEIGHBOURS_INDEPENDENT, false}, {0}};
-static const struct keys_word liquids[] = {{"water", 0, false}, {"blank", 1, true}, {0}};
+static const struct keys_word liquids[] = {{"water", false, false}, {"blank", true, false}, {0}};
 static const struct keys_word yes_no[] = {{"yes", true, false}, {"no", false, false}, {0}};
 
 /* clang-format off */
@@ -122,9 +122,11 @@ const struct keys_row keys_polymer_cleavage[] = {
      .help = "the same for the density; iodate and periodate +0.0175 % per mmol/L",
      .source = "ion coefficients, " MEMORY, KEYS_INTO(struct cleavage, reagent_density)},
     {.key = "diluent", .kind = KEYS_CHOICE, .unit = "", .words = liquids, .fallback = "water",
-     .help = "what the cleaved stock is diluted with", .source = KEYS_PRACTICE},
+     .help = "what the cleaved stock is diluted with; the blank holds the spent reagent, but no polymer",
+     .source = KEYS_PRACTICE, KEYS_INTO(struct cleavage, blank_diluent)},
     {.key = "reference", .kind = KEYS_CHOICE, .unit = "", .words = liquids, .fallback = "water",
-     .help = "whose time is t_0 of the cleaved series", .source = KEYS_PRACTICE},
+     .help = "whose time is t_0 of the cleaved series", .source = KEYS_PRACTICE,
+     KEYS_INTO(struct cleavage, blank_reference)},
     {.key = "correct_conversion", .kind = KEYS_CHOICE, .unit = "", .words = yes_no, .fallback = "yes",
      .help = "the analyst allows for the nominal conversion and hydrolysis", .source = KEYS_PRACTICE,
      KEYS_INTO(struct cleavage, correct_conversion)},

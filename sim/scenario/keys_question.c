@@ -4,7 +4,7 @@
 
 static const struct keys_word sides[] = {{"one", SIDES_ONE, false}, {"two", SIDES_TWO, false}, {0}};
 static const struct keys_word against_is[] = {
-    {"stated", AGAINST_STATED, false}, {"same-constants", AGAINST_SAME_CONSTANTS, false}, {"measured", 0, true}, {0}};
+    {"stated", AGAINST_STATED, false}, {"same-constants", AGAINST_SAME_CONSTANTS, false}, {"measured", AGAINST_MEASURED, false}, {0}};
 
 /* clang-format off */
 const struct keys_row keys_question_top[] = {

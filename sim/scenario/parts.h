@@ -79,7 +79,8 @@ struct scenario {
     struct choice choices[PARTS_PLAN_KEYS];
     size_t keys, candidates;
     size_t radix[PARTS_PLAN_KEYS];     /* of each key as a digit, see candidates.c */
-    size_t extrapolation, grade, tube; /* their places among the keys */
+    size_t extrapolation, material, grade, tube; /* their places among the keys */
+    struct chains *chains;                       /* of each grade, material by material */
     const char **zero_sources;
     size_t zero_count;
     struct question question;

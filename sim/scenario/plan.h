@@ -6,19 +6,23 @@
 
 #include <stdbool.h>
 #include <stddef.h>
+#include <stdint.h>
 
 #include "models/analysis.h"
 #include "models/bath.h"
+#include "models/chains.h"
 #include "models/glassware.h"
 #include "models/polymer.h"
 #include "models/scission.h"
 #include "models/solution.h"
 #include "models/tube.h"
 
-enum { PLAN_MAX_LEVELS = 12, PLAN_MAX_FILLINGS = 12, PLAN_MAX_RUNS = 12, PLAN_MAX_SPARE = 10 };
+enum { PLAN_MAX_LEVELS = 12, PLAN_MAX_FILLINGS = 12, PLAN_MAX_RUNS = 12, PLAN_MAX_SPARE = 10, PLAN_MAX_PREPARATIONS = 12 };
 
 enum sides { SIDES_ONE, SIDES_TWO };
-enum against_is { AGAINST_STATED, AGAINST_SAME_CONSTANTS };
+enum against_is { AGAINST_STATED, AGAINST_SAME_CONSTANTS, AGAINST_MEASURED };
+enum dilution { DILUTION_FLASKS, DILUTION_IN_TUBE };
+enum order { ORDER_SEQUENTIAL, ORDER_SHUFFLED, ORDER_BRACKETED };
 enum least { LEAST_HOURS, LEAST_MONEY };
 
 /* What is asked; fractions and shares as plain numbers (0.015). */
@@ -48,6 +52,7 @@ struct cleavage {
     enum scission_neighbours neighbours;
     double conversion, conversion_u, nonspecific;
     double reagent_viscosity, reagent_density;
+    bool blank_diluent, blank_reference; /* else water */
     bool correct_conversion;
 };
 
@@ -64,7 +69,7 @@ struct solutions {
 
 struct habits {
     double temperature_K, room_K;
-    double equilibrate_s, lag_s, clean_and_fill_s, reset_s;
+    double equilibrate_s, lag_s, clean_and_fill_s, add_and_mix_s, reset_s;
     double rinse_m3, carry_over;
     double filling_u, charge_u_m3, tilt_u_rad, kinetic_u;
     double bubble_chance, bubble_delay;
@@ -79,6 +84,8 @@ struct grade {
     const char *name;
     double molar_mass_kg_mol;
     enum polymer_average average;
+    enum chains_kind distribution;
+    double dispersity;
     double price_per_kg;
 };
 
@@ -127,9 +134,15 @@ struct plan {
     bool temperature_record;
     double top[SERIES]; /* relative viscosity of the top level */
     double lowest;
-    size_t levels[SERIES], fillings[SERIES];
+    size_t levels[SERIES];
+    enum dilution dilution;
+    size_t preparations;
+    size_t fillings[SERIES]; /* in the tube: loadings */
     size_t runs, water_fillings, water_runs;
+    enum order order;
     struct analysis analysis;
+    const struct chains *chains; /* of the grade, for this pair */
+    uint64_t seed;               /* deals a shuffled order */
 };
 
 /* What a plan may cost and how that is counted. at_most: infinity when free. */

@@ -66,6 +66,14 @@ static bool resolve_uses(const struct resolving *v, size_t key, size_t option)
     return !v->cut || v->option[key] == option;
 }
 
+/* With several materials their values stand with them, not in `polymer`. */
+static bool resolve_is_of_materials(const struct resolving *v, const struct keys_row *row)
+{
+    const struct keys_section *own = keys_section(KEYS_MATERIALS);
+    return choices_find(v->scenario, "material")->count > 1 &&
+           (strcmp(row->key, "material") == 0 || keys_find(own, row->key) < keys_count(own));
+}
+
 /* The hydrolysis in `polymer` would win over that of a grade: where it is not
  * given there and a grade in use has its own, it stays with the material. */
 static bool resolve_is_left_out(const struct resolving *v, const struct record *record, const struct keys_row *row,
@@ -74,6 +82,8 @@ static bool resolve_is_left_out(const struct resolving *v, const struct record *
     if (value->state != VALUE_GOOD && row->kind != KEYS_OWNED && row->kind != KEYS_AT_MOST)
         return true;
     if (row->flags & KEYS_SILENT)
+        return true;
+    if (record->section->id == KEYS_POLYMER && resolve_is_of_materials(v, row))
         return true;
     if (record->section->id != KEYS_POLYMER || value->own || strncmp(row->key, "hydrolysis", 10) != 0)
         return false;

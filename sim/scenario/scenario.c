@@ -116,7 +116,7 @@ static void scenario_take(const struct reading *r, struct scenario *s, const str
     scenario_compile(s);
     if (!candidates_count(s))
         complain_at(r->out, r->whole, "plan has more than %u combinations", CANDIDATES_MAX);
-    else if (!zero_find(s))
+    else if (!candidates_make_chains(s) || !zero_find(s))
         complain_memory(r->out);
 }
 
