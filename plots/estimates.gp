@@ -1,7 +1,7 @@
 # How the estimates scatter under both fractions, and the value to decide at.
 # Reads: from, studies at the expected fraction, studies at the other one.
 tail = outside > 0.25 ? sprintf(" (not shown: %.1f %% of studies)", outside) : ""
-set xlabel "estimated head-to-head fraction / %".tail
+set xlabel estimate_label.tail
 set ylabel share_label
 set xrange [low:high]
 set yrange [0:*]

@@ -1,5 +1,5 @@
 # What all figures share. Before this stand: format (svg or pdf), output,
-# input, and the figure's own variables.
+# input, and the figure's own variables (height in units of 600 for the width).
 #
 # Sizes are for 160 mm of width: 12.5 units of 600 in SVG and 10 pt in PDF both
 # show as at least 9 pt there. Colours: Okabe and Ito's, told apart with any
@@ -8,7 +8,7 @@ set encoding utf8
 set datafile separator comma
 set datafile columnheaders
 set key noautotitle noenhanced
-height = 380
+if (!exists("height")) height = 380
 if (format eq "svg") {
     set terminal svg noenhanced size 600,height font "sans-serif,13" linewidth 1 dynamic background rgb "white"
 } else {

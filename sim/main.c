@@ -180,38 +180,52 @@ static void on_progress(void *context, double done)
     progress_update(context, done);
 }
 
-/* The estimates for the figure: those of the plan that is reported, from the
- * studies its figures come from. */
-static bool reported_estimates(const struct scenario *s, const struct search_result *r, struct estimates *out)
+/* What is reported of a search besides itself, about the recommended plan or
+ * the nearest miss: estimates from the studies its figures come from, the
+ * resolving map, and where more work makes it worse. */
+struct around {
+    struct estimates estimates;
+    struct survey_map map;
+    struct worse worse[4];
+    size_t worse_count;
+    bool has_map;
+};
+
+static bool look_around(const struct scenario *s, const struct search_result *r, struct around *out)
 {
     const bool found = r->recommended != SEARCH_NONE;
     const long index = found ? r->recommended : r->nearest_miss;
     struct plan plan;
     struct outcome again;
-    *out = (struct estimates){0};
+    memset(out, 0, sizeof *out);
     if (index == SEARCH_NONE) return true;
     scenario_plan(s, (size_t)index, &plan);
-    return trial_run(s, &plan, (struct trial_options){.first_study = found ? search_fresh_study(s) : 0}, &again, out);
+    out->has_map = true;
+    return trial_run(s, &plan, (struct trial_options){.first_study = found ? search_fresh_study(s) : 0}, &again, &out->estimates) &&
+           survey_map_make(s, &plan, &out->map) &&
+           worse_find(s, (size_t)index, sizeof out->worse / sizeof *out->worse, out->worse, &out->worse_count);
 }
 
 static int do_plan(const struct usage *u, const struct report_context *context)
 {
     struct search_result result;
-    struct estimates estimates = {0};
+    struct around around = {0};
     struct progress progress;
     progress_start(&progress, stderr, u->quiet);
-    const bool ok = search_run(context->scenario, (struct search_options){.progress = on_progress, .context = &progress}, &result);
+    bool ok = search_run(context->scenario, (struct search_options){.progress = on_progress, .context = &progress}, &result);
+    const bool searched = ok;
+    if (ok) ok = look_around(context->scenario, &result, &around);
     progress_end(&progress);
-    if (!ok) return out_of_memory();
     int status = FAILED;
-    if (reported_estimates(context->scenario, &result, &estimates)) {
-        const struct report_planned planned = {&result, estimates.n ? &estimates : NULL};
+    if (ok) {
+        const struct report_planned planned = {.search = &result, .estimates = around.estimates.n ? &around.estimates : NULL,
+                                               .map = around.has_map ? &around.map : NULL, .worse = around.worse, .worse_count = around.worse_count};
         status = report_plan(context, &planned);
         if (status == DONE && result.recommended == SEARCH_NONE) status = NOT_RESOLVED;
     } else
         out_of_memory();
-    trial_free_estimates(&estimates);
-    search_free(&result);
+    trial_free_estimates(&around.estimates);
+    if (searched) search_free(&result);
     return status;
 }
 
@@ -228,32 +242,59 @@ static bool closed(const struct scenario *s, const char *path)
     return false;
 }
 
-static int do_trial(const struct usage *u, const struct report_context *context)
-{
-    const struct scenario *const s = context->scenario;
+/* All that is played of one plan. */
+struct tried {
     struct plan plan;
     struct outcome outcome;
     struct estimates estimates;
     struct example example;
+    struct show_notebook notebook;
+    struct survey_curve curve;
+    struct survey_tops tops;
+    bool narrow, played;
+};
+
+static bool try_plan(const struct scenario *s, struct progress *progress, struct tried *t)
+{
+    const struct trial_options options = {.deep = true, .progress = on_progress, .context = progress};
+    const bool curve = scenario_question(s)->has_against;
+    memset(t, 0, sizeof *t);
+    scenario_plan(s, 0, &t->plan);
+    bool ok = trial_run(s, &t->plan, options, &t->outcome, &t->estimates);
+    t->played = ok && t->estimates.n > 0;
+    if (!t->played) return ok;
+    return trial_too_narrow(s, &t->plan, &t->narrow) && show_example(s, &t->plan, 0, &t->example) &&
+           show_notebook_make(s, &t->plan, 0, &t->notebook) && survey_tops_make(s, &t->plan, &t->tops) &&
+           (!curve || survey_curve_make(s, &t->plan, t->outcome.at.critical, &t->curve));
+}
+
+static int do_trial(const struct usage *u, const struct report_context *context)
+{
+    const struct scenario *const s = context->scenario;
+    struct tried t;
     struct progress progress;
-    bool narrow = false;
     if (!closed(s, u->scenario)) return WRONG;
-    scenario_plan(s, 0, &plan);
     progress_start(&progress, stderr, u->quiet);
-    const struct trial_options options = {.deep = true, .progress = on_progress, .context = &progress};
-    bool ok = trial_run(s, &plan, options, &outcome, &estimates);
-    const bool played = ok && estimates.n > 0;
-    if (played) ok = trial_too_narrow(s, &plan, &narrow) && show_example(s, &plan, 0, &example);
+    const bool ok = try_plan(s, &progress, &t);
     progress_end(&progress);
-    if (!ok) {
-        trial_free_estimates(&estimates);
-        return out_of_memory();
-    }
-    const struct report_tried tried = {0, &outcome, played ? &estimates : NULL, played ? &example : NULL, narrow};
-    int status = report_trial(context, &tried);
-    if (status == DONE && u->times) status = times_write(context, 0, u->times, u->notebooks ? u->notebooks : 1);
-    trial_free_estimates(&estimates);
-    return status == DONE && outcome.status != STATUS_RESOLVES ? NOT_RESOLVED : status;
+    int status = FAILED;
+    if (ok) {
+        struct report_tried tried = {.outcome = &t.outcome, .within_too_narrow = t.narrow};
+        if (t.played) {
+            tried.estimates = &t.estimates;
+            tried.example = &t.example;
+            tried.notebook = &t.notebook;
+            tried.tops = &t.tops;
+            if (scenario_question(s)->has_against) tried.curve = &t.curve;
+        }
+        status = report_trial(context, &tried);
+        if (status == DONE && u->times) status = times_write(context, 0, u->times, u->notebooks ? u->notebooks : 1);
+        if (status == DONE && t.outcome.status != STATUS_RESOLVES) status = NOT_RESOLVED;
+    } else
+        out_of_memory();
+    show_notebook_free(&t.notebook);
+    trial_free_estimates(&t.estimates);
+    return status;
 }
 
 static int do_check(const struct report_context *context)

@@ -233,12 +233,21 @@ LANES_WIDE static void run_timing(const struct plan *p, double n[][LANES], doubl
     if (resolution > 0.0) FOR_LANES(l) time_s[l] = rounded(time_s[l], resolution);
 }
 
+/* The bath as it is. */
+static double bath_now_K(const struct bench *b, int l)
+{
+    return b->design->plan->habits.temperature_K - b->truth.calibration_K[l] + b->day_K[l] + b->drift_K_s[l] * b->clock_s[l] + b->bath_K[l];
+}
+
 /* Run number `number` of a filling, in the lanes that go. */
 static void make_run(struct bench *b, size_t filling, struct run *r, size_t number)
 {
     struct bench_filled *const f = &b->filled;
     struct notebook_run *const entry = &notebook_runs(&b->book, filling)[number];
+    struct bench_traced_run *const traced = b->trace ? &b->trace->run[filling * b->book.layout->stride + number] : NULL;
+    if (traced) FOR_LANES(l) traced->bath_K[l] = bath_now_K(b, l);
     run_temperatures(b, f, r, entry->read_K);
+    if (traced) memcpy(traced->liquid_K, r->liquid_K, sizeof traced->liquid_K);
     run_efflux(b, f, r->liquid_K, entry->time_s);
     run_timing(b->design->plan, r->draws, entry->time_s);
     notebook_bring_to_set(&b->design->assumed, entry);
@@ -271,7 +280,7 @@ static void make_spare_runs(struct bench *b, size_t filling, struct draws_fillin
 void bench_fill(struct bench *b, size_t filling, struct draws_filling *draws, const double delivery[LANES])
 {
     struct run run;
-    if (b->started_s) memcpy(b->started_s[filling], b->clock_s, sizeof b->clock_s);
+    if (b->trace) memcpy(b->trace->started_s[filling], b->clock_s, sizeof b->clock_s);
     if (b->design->filling[filling].added)
         add_solvent(b, filling, draws, delivery);
     else

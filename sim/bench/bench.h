@@ -18,6 +18,16 @@ struct bench_filled {
     double gradient_K[LANES];
 };
 
+/* What a look at one study wants to know besides its notebook; caller's arrays. */
+struct bench_traced_run {
+    double bath_K[LANES];   /* the bath when the run begins */
+    double liquid_K[LANES]; /* the liquid's mean over the run */
+};
+struct bench_trace {
+    double (*started_s)[LANES];    /* [fillings] clock of the day when a filling began */
+    struct bench_traced_run *run;  /* [fillings * stride] */
+};
+
 /* One fraction's bench: what changes as the clock runs. */
 struct bench {
     const struct design *design;
@@ -31,7 +41,7 @@ struct bench {
     double done_s[LANES];           /* clock of the days that are over */
     double spare_runs[LANES];
     struct bench_filled filled;     /* the filling, or loading, of now; before it the last one */
-    double (*started_s)[LANES];     /* [fillings] clock of the day when a filling began, or NULL */
+    const struct bench_trace *trace; /* NULL: nobody looks */
 };
 
 /* Open a day with its draws (DRAWS_DAY slots). */

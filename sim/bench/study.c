@@ -190,7 +190,7 @@ void study_show(size_t block, const struct study_job *job, unsigned preparation,
     struct parts parts = parts_of(job, scratch);
     const struct playing now = {.job = job, .key = draws_key(job->seed, (uint64_t)block * LANES), .where = {0, preparation}, .fractions = 1};
     start(&now, &parts);
-    parts.block->bench[0].started_s = out->started_s;
+    parts.block->bench[0].trace = &out->trace;
     work(&now, parts.block);
     out->book = parts.block->bench[0].book;
 }

@@ -42,11 +42,11 @@ size_t study_scratch_size(const struct study_job *job);
 void study_play(size_t block, const void *job, void *slot, void *scratch);
 
 /* Play one block's first polymer at fraction number 0, one of its preparations,
- * and keep what the notebook of each lane says; `started_s` [fillings] gets the
- * clock at which each filling began. For the synthetic notebook and figures. */
+ * and keep what the notebook of each lane says, and the trace into its arrays.
+ * For the synthetic notebook and figures. */
 struct study_shown {
     struct notebook book;
-    double (*started_s)[LANES];
+    struct bench_trace trace;
 };
 void study_show(size_t block, const struct study_job *job, unsigned preparation, void *scratch, struct study_shown *out);
 

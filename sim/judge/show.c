@@ -18,15 +18,17 @@ static bool prepare(const struct scenario *s, const struct design *d, struct sho
                                   .analyses = 1, .analysis = &d->plan->analysis};
     out->scratch = aligned_alloc(64, (study_scratch_size(&out->job) + 63) / 64 * 64);
     out->times_memory = malloc(reduction_size(&d->layout));
-    out->study.started_s = malloc(d->layout.fillings * sizeof *out->study.started_s);
-    return out->scratch && out->times_memory && out->study.started_s;
+    out->study.trace.started_s = malloc(d->layout.fillings * sizeof *out->study.trace.started_s);
+    out->study.trace.run = malloc(d->layout.fillings * d->layout.stride * sizeof *out->study.trace.run);
+    return out->scratch && out->times_memory && out->study.trace.started_s && out->study.trace.run;
 }
 
 static void forget(struct shown *s)
 {
     free(s->scratch);
     free(s->times_memory);
-    free(s->study.started_s);
+    free(s->study.trace.started_s);
+    free(s->study.trace.run);
 }
 
 static void reduce_example(const struct design *d, const struct shown *shown, int lane, struct example *out)
@@ -77,12 +79,14 @@ static void list_runs(const struct design *d, const struct shown *shown, int lan
     for (size_t f = 0; f < d->layout.fillings; f++) {
         const struct design_liquid *const q = &d->liquid[design_liquid_of(d, &d->filling[f])];
         const struct notebook_run *const run = notebook_runs(&shown->study.book, f);
+        const struct bench_traced_run *const traced = &shown->study.trace.run[f * d->layout.stride];
         const double before_s = d->filling[f].added ? h->add_and_mix_s : h->clean_and_fill_s;
-        const double first_s = shown->study.started_s[f][lane] + before_s + h->equilibrate_s;
+        const double first_s = shown->study.trace.started_s[f][lane] + before_s + h->equilibrate_s;
         for (size_t r = 0; r < shown->study.book.made[f][lane]; r++)
             out->run[out->runs++] = (struct show_run){
                 .preparation = preparation, .filling = &d->filling[f], .run = r, .started_s = first_s + (double)r * (q->nominal_s + h->reset_s), .time_s = run[r].time_s[lane],
-                .read_K = d->assumed.record ? run[r].read_K[lane] : (double)NAN, .conc_kg_m3 = q->conc_kg_m3};
+                .read_K = d->assumed.record ? run[r].read_K[lane] : (double)NAN, .conc_kg_m3 = q->conc_kg_m3,
+                .nominal_s = q->nominal_s, .bath_K = traced[r].bath_K[lane], .liquid_K = traced[r].liquid_K[lane]};
     }
 }
 

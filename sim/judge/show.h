@@ -16,6 +16,8 @@ struct show_run {
     double started_s; /* clock of its day */
     double time_s, read_K; /* as read; NaN: not read */
     double conc_kg_m3;     /* nominal; 0 for water */
+    double nominal_s;      /* how long it takes by nominal values */
+    double bath_K, liquid_K; /* the bath when it begins, the liquid's mean over it */
 };
 struct show_notebook {
     size_t runs;

@@ -79,13 +79,8 @@ static bool draw(struct figures_pen *pen, struct cost_axes axes, const struct sc
                  const struct search_result *r)
 {
     struct files_text csv, text;
-    if (!files_text_open(&csv))
+    if (!figures_open(&csv, &text))
         return false;
-    if (!files_text_open(&text)) {
-        files_text_close(&csv);
-        files_text_free(&csv);
-        return false;
-    }
     rows(csv.stream, axes, s, r);
     variables(text.stream, axes, s, r);
     return figures_draw(pen, axes.share && scenario_question(s)->has_against ? "share" : "cost", "cost.gp", &csv,

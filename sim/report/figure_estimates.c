@@ -104,16 +104,20 @@ static void variables(FILE *to, const struct bins *b, const struct question *q, 
     char text[120];
     snprintf(text, sizeof text, "studies in each step of %s points / %%", say_number(b->step).text);
     gnuplot_text(to, "share_label", text);
-    snprintf(text, sizeof text, "if the truth is %s", say_share(q->expect).text);
+    const bool measured = q->has_against && q->against_is == AGAINST_MEASURED;
+    snprintf(text, sizeof text, measured ? "if they differ by %s points" : "if the truth is %s",
+             measured ? say_points_of(o->truth).text : say_share(q->expect).text);
     gnuplot_text(to, "expect_label", text);
-    snprintf(text, sizeof text, "if the truth is %s", say_share(q->against).text);
+    snprintf(text, sizeof text, measured ? "if they do not differ" : "if the truth is %s", say_share(q->against).text);
     gnuplot_text(to, "against_label", q->has_against ? text : "");
-    snprintf(text, sizeof text, "decide at %s", say_points(o->at.critical).text);
+    snprintf(text, sizeof text, measured ? "decide at %s points" : "decide at %s",
+             measured ? say_points_of(o->at.critical).text : say_points(o->at.critical).text);
     gnuplot_text(to, "critical_label", q->has_against ? text : "");
-    snprintf(text, sizeof text, "%.40s ± %.40s points", say_share(q->expect).text,
+    snprintf(text, sizeof text, "%.40s ± %.40s points", say_share(o->truth).text,
              say_short(say_percent(q->within), 4).text);
     gnuplot_text(to, "within_label", q->has_within ? text : "");
-    gnuplot_number(to, "expect", say_percent(q->expect));
+    gnuplot_number(to, "expect", say_percent(o->truth));
+    gnuplot_text(to, "estimate_label", measured ? "estimated difference of the two / points" : "estimated head-to-head fraction / %");
     gnuplot_number(to, "within", q->has_within ? say_percent(q->within) : (double)NAN);
     gnuplot_number(to, "critical", q->has_against ? say_percent(o->at.critical) : (double)NAN);
     gnuplot_number(to, "low", b->low - b->step);
@@ -123,7 +127,7 @@ static void variables(FILE *to, const struct bins *b, const struct question *q, 
 bool figure_estimates(struct figures_pen *pen, const struct question *question, const struct outcome *outcome,
                       const struct estimates *estimates)
 {
-    double low = question->expect, high = question->expect;
+    double low = outcome->truth, high = outcome->truth;
     const bool two = question->has_against && estimates->against;
     widen(estimates->expect, estimates->n, &low, &high);
     if (two)
@@ -132,13 +136,8 @@ bool figure_estimates(struct figures_pen *pen, const struct question *question, 
     if (b.count == 0)
         return true; /* no scatter: nothing to draw */
     struct files_text csv, text;
-    if (!files_text_open(&csv))
+    if (!figures_open(&csv, &text))
         return false;
-    if (!files_text_open(&text)) {
-        files_text_close(&csv);
-        files_text_free(&csv);
-        return false;
-    }
     const double outside = deal(&b, estimates->expect, estimates->n, b.expect);
     const double other = two ? deal(&b, estimates->against, estimates->n, b.against) : 0.0;
     rows(csv.stream, &b, question);

@@ -96,13 +96,8 @@ bool figure_extrapolation(struct figures_pen *pen, const struct plan *plan, cons
 {
     const enum extrapolation e = plan->analysis.extrapolation;
     struct files_text csv, text;
-    if (!files_text_open(&csv))
+    if (!figures_open(&csv, &text))
         return false;
-    if (!files_text_open(&text)) {
-        files_text_close(&csv);
-        files_text_free(&csv);
-        return false;
-    }
     rows(csv.stream, e, example);
     variables(text.stream, e, example);
     return figures_draw(pen, "extrapolation", "extrapolation.gp", &csv, &text);

@@ -1,5 +1,16 @@
 #include "sim/report/figures.h"
 
+bool figures_open(struct files_text *csv, struct files_text *variables)
+{
+    if (!files_text_open(csv))
+        return false;
+    if (files_text_open(variables))
+        return true;
+    files_text_close(csv);
+    files_text_free(csv);
+    return false;
+}
+
 bool figures_draw(struct figures_pen *pen, const char *name, const char *script, struct files_text *csv,
                   struct files_text *variables)
 {

@@ -13,6 +13,9 @@ struct figures_pen {
     struct files_failure failure; /* of a CSV that could not be written, or of gnuplot */
 };
 
+/* Open both texts of a figure; false without memory (neither is open then). */
+bool figures_open(struct files_text *csv, struct files_text *variables);
+
 /* One figure: the CSV's text and the variables' text, both still open, are
  * closed and freed. False: a file could not be written. */
 bool figures_draw(struct figures_pen *pen, const char *name, const char *script, struct files_text *csv,

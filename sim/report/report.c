@@ -5,9 +5,13 @@
 #include <time.h>
 
 #include "sim/report/candidates_csv.h"
+#include "sim/report/figure_clock.h"
 #include "sim/report/figure_cost.h"
 #include "sim/report/figure_estimates.h"
 #include "sim/report/figure_extrapolation.h"
+#include "sim/report/figure_map.h"
+#include "sim/report/figure_power.h"
+#include "sim/report/figure_tops.h"
 #include "sim/report/json_out_plan.h"
 #include "sim/report/json_out_print.h"
 #include "sim/report/run_log.h"
@@ -94,6 +98,8 @@ static bool draw_plan(const struct report_context *context, const struct report_
     bool good = figure_cost(&pen, context->scenario, r);
     if (good && planned->estimates)
         good = figure_estimates(&pen, q, r->recommended != SEARCH_NONE ? &r->fresh : &r->nearest, planned->estimates);
+    if (good && planned->map)
+        good = figure_map(&pen, q, planned->map);
     if (good)
         tell_drawn(context, &pen);
     else
@@ -112,6 +118,12 @@ static bool draw_trial(const struct report_context *context, const struct report
         good = figure_estimates(&pen, scenario_question(context->scenario), tried->outcome, tried->estimates);
     if (good && tried->example)
         good = figure_extrapolation(&pen, &plan, tried->example);
+    if (good && tried->notebook)
+        good = figure_clock(&pen, tried->notebook);
+    if (good && tried->curve)
+        good = figure_power(&pen, scenario_question(context->scenario), tried->curve);
+    if (good && tried->tops)
+        good = figure_tops(&pen, &plan, tried->tops);
     if (good)
         tell_drawn(context, &pen);
     else
@@ -129,7 +141,10 @@ static struct warnings *plan_warnings(const struct report_context *context, cons
         return warnings_collect(s, NULL, NULL, r->within_too_narrow);
     struct plan plan;
     scenario_plan(s, (size_t)index, &plan);
-    return warnings_collect(s, &plan, resolves ? &r->fresh : &r->nearest, r->within_too_narrow);
+    struct warnings *w = warnings_collect(s, &plan, resolves ? &r->fresh : &r->nearest, r->within_too_narrow);
+    if (w)
+        warnings_add_worse(w, s, planned->worse, planned->worse_count);
+    return w;
 }
 
 /* The answer on stdout; false when it could not be written. */

@@ -8,7 +8,10 @@
 #include <stdio.h>
 
 #include "sim/judge/search.h"
+#include "sim/judge/show.h"
+#include "sim/judge/survey.h"
 #include "sim/judge/trial.h"
+#include "sim/judge/worse.h"
 #include "sim/scenario/scenario.h"
 
 /* One run of the program, as the reports need it. */
@@ -29,14 +32,21 @@ struct report_context {
 struct report_planned {
     const struct search_result *search;
     const struct estimates *estimates;
+    const struct survey_map *map; /* of that plan; NULL: none */
+    const struct worse *worse;    /* where more work makes it worse */
+    size_t worse_count;
 };
 
-/* One plan in depth; of an impossible one `estimates` and `example` are NULL. */
+/* One plan in depth; of an impossible one all that was played is NULL, and
+ * `curve` too where `against` is not asked. */
 struct report_tried {
     size_t index; /* of the plan in the scenario */
     const struct outcome *outcome;
     const struct estimates *estimates;
     const struct example *example;
+    const struct show_notebook *notebook; /* of the same simulated study */
+    const struct survey_curve *curve;
+    const struct survey_tops *tops;
     bool within_too_narrow;
 };
 

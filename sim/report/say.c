@@ -122,6 +122,14 @@ struct say say_points(double fraction)
     return s;
 }
 
+struct say say_points_of(double difference)
+{
+    struct say s = {"-"};
+    if (isfinite(difference))
+        snprintf(s.text, sizeof s.text, "%.3f", say_percent(difference));
+    return s;
+}
+
 struct say say_by_error(double x, double se)
 {
     struct say s = {"-"};

@@ -36,6 +36,9 @@ struct say say_share(double fraction);
 /* A fraction in % rounded to 0.001 points: "1.391 %". */
 struct say say_points(double fraction);
 
+/* A difference of fractions in points, rounded to 0.001: "0.062". */
+struct say say_points_of(double difference);
+
 /* A value with `digits` significant digits, plain notation. */
 struct say say_digits(double x, int digits);
 

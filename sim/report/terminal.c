@@ -50,8 +50,13 @@ static void figures_against(const struct page *page, const struct question *q, c
     page_say(page, PAGE_PLAIN, "Power %s %% (%s), %s asked.", say_by_error(power, error).text, error_of(o, error).text,
              say_share(q->power).text);
     const bool more = q->expect > q->against;
-    page_say(page, PAGE_BOLD, "Decide at %s: an estimate %s it is not %s but %s.", say_points(o->at.critical).text,
-             more ? "above" : "below", say_share(q->against).text, more ? "more" : "less");
+    if (q->against_is == AGAINST_MEASURED)
+        page_say(page, PAGE_BOLD, "Decide at a difference of %s points: when the first polymer's estimate less the "
+                 "second's is %s that, the first holds %s.", say_points_of(o->at.critical).text,
+                 more ? "above" : "below", more ? "more" : "less");
+    else
+        page_say(page, PAGE_BOLD, "Decide at %s: an estimate %s it is not %s but %s.", say_points(o->at.critical).text,
+                 more ? "above" : "below", say_share(q->against).text, more ? "more" : "less");
     if (isfinite(o->resolvable_against))
         page_say(page, PAGE_PLAIN, "With %s power the smallest difference it tells apart is %s points: %s from %s.",
                  say_share(q->power).text, say_digits(fabs(say_percent(q->expect - o->resolvable_against)), 3).text,
@@ -127,8 +132,13 @@ static void series(const struct page *page, const struct terminal_subject *subje
     for (size_t j = 0; j < o->levels[which]; j++)
         fprintf(list.stream, "%s%s", j > 0 ? ", " : "", say_digits(say_g_dL(o->concentration_kg_m3[which][j]), 3).text);
     if (files_text_close(&list)) {
-        page_item(page, which == INTACT ? "intact" : "cleaved", "%s g/dL; %s of each, %s of each filling", list.bytes,
-                  say_plural(p->fillings[which], "filling").text, say_plural(p->runs, "run").text);
+        const char *name = which == INTACT ? "intact" : "cleaved";
+        if (p->dilution == DILUTION_IN_TUBE)
+            page_item(page, name, "%s g/dL, diluted in the tube; %s, %s at each level", list.bytes,
+                      say_plural(p->fillings[which], "loading").text, say_plural(p->runs, "run").text);
+        else
+            page_item(page, name, "%s g/dL; %s of each, %s of each filling", list.bytes,
+                      say_plural(p->fillings[which], "filling").text, say_plural(p->runs, "run").text);
         flasks(page, subject, which);
     }
     files_text_free(&list);
@@ -147,6 +157,21 @@ static void reduction(const struct page *page, const struct plan *p)
               a->chain_statistics == CHAIN_DISCRETE ? "discrete" : "continuous");
 }
 
+/* What the plain study has not: an order of its own, preparations, a second
+ * polymer. */
+static void repeats(const struct page *page, const struct terminal_subject *subject)
+{
+    const struct plan *p = subject->plan;
+    if (p->order == ORDER_SHUFFLED)
+        page_item(page, "order", "shuffled, once for the study");
+    if (p->order == ORDER_BRACKETED)
+        page_item(page, "order", "half of each day's water at its end");
+    if (p->preparations > 1)
+        page_item(page, "preparations", "%zu, each from the balance on", p->preparations);
+    if (scenario_question(subject->scenario)->against_is == AGAINST_MEASURED)
+        page_item(page, "polymers", "two measured alongside, each as above");
+}
+
 void terminal_bench(const struct page *page, const struct terminal_subject *subject)
 {
     const struct plan *p = subject->plan;
@@ -155,8 +180,10 @@ void terminal_bench(const struct page *page, const struct terminal_subject *subj
     glass(page, p);
     series(page, subject, INTACT);
     series(page, subject, CLEAVED);
-    page_item(page, "water", "%s of %s, %s", say_plural(p->water_fillings, "filling").text,
-              say_plural(p->water_runs, "run").text, p->habits.water_every_day ? "every day" : "on the first day");
+    page_item(page, "water", "%s of %s, %s%s", say_plural(p->water_fillings, "filling").text,
+              say_plural(p->water_runs, "run").text, p->habits.water_every_day ? "every day" : "on the first day",
+              p->cleavage.blank_reference ? "; the same of the blank before the cleaved series" : "");
+    repeats(page, subject);
     reduction(page, p);
     page_item(page, "takes", "%s, %s h (%s h of it at the tube), %s g of polymer", say_plural(o->days, "day").text,
               say_digits(say_hours(o->at.hours_s), 3).text, say_digits(say_hours(o->at.clock_s), 3).text,

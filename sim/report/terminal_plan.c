@@ -63,6 +63,9 @@ static void way_out(const struct page *page, const struct question *q, const str
     if (constants)
         page_point(page, "compare with a fraction found with the same K and a, whose uncertainty cancels then "
                          "(question.against_is: same-constants)");
+    if (constants && q->has_against && q->against_is == AGAINST_STATED)
+        page_point(page, "measure a second polymer of the same grade alongside, which shares K and a "
+                         "(question.against_is: measured)");
     if (bench)
         page_point(page, "offer more replicates, a steadier bath, a finer thermometer or another tube");
     wider_question(page, q, &r->nearest);

@@ -184,6 +184,55 @@ static void zero_sources(struct warnings *w, const struct scenario *s)
     files_text_free(&list);
 }
 
+/* What the blank does when the levels hold less reagent than it. */
+static void blank(struct warnings *w, const struct cleavage *c)
+{
+    if (c->blank_reference && !c->blank_diluent)
+        add(w, "the blank is the reference, but the cleaved levels are diluted with water: they hold less reagent than "
+               "the blank, which over-corrects. Dilute them with the blank, or take water as the reference.");
+}
+
+/* "fillings 3, runs 5": the replicates in which a plan differs from another. */
+static void name_replicates(FILE *to, const struct scenario *s, size_t index, size_t other)
+{
+    bool any = false;
+    for (size_t k = 0; k < scenario_keys(s); k++) {
+        const size_t option = scenario_option_of(s, index, k);
+        if (option == scenario_option_of(s, other, k))
+            continue;
+        fprintf(to, "%s%s %s", any ? ", " : "", scenario_key(s, k), scenario_option(s, k, option));
+        any = true;
+    }
+}
+
+void warnings_add_worse(struct warnings *warnings, const struct scenario *scenario, const struct worse *worse,
+                        size_t count)
+{
+    static const char *const cause[] = {
+        [WORSE_DRIFT] = "the drift of the bath turns the order: a longer day moves further from its own water",
+        [WORSE_SPARE_RUNS] = "the spare runs turn the order: with more runs to choose from, those that agree are not "
+                             "those that are right",
+        [WORSE_DAYS] = "the days turn the order: where one ends within a series, its levels are held against "
+                       "different waters",
+        [WORSE_UNKNOWN] = "neither the drift of the bath, nor the spare runs, nor the days turn the order"};
+    for (size_t i = 0; i < count; i++) {
+        struct files_text dear, cheap;
+        if (!files_text_open(&dear))
+            return;
+        name_replicates(dear.stream, scenario, worse[i].dearer, worse[i].cheaper);
+        const bool good = files_text_close(&dear) && files_text_open(&cheap);
+        if (good) {
+            name_replicates(cheap.stream, scenario, worse[i].cheaper, worse[i].dearer);
+            if (files_text_close(&cheap))
+                add(warnings, "more work makes it worse: with %s it reaches %s, with the cheaper %s %s; %s.",
+                    dear.bytes, say_share(worse[i].figure[1]).text, cheap.bytes, say_share(worse[i].figure[0]).text,
+                    cause[worse[i].cause]);
+            files_text_free(&cheap);
+        }
+        files_text_free(&dear);
+    }
+}
+
 struct warnings *warnings_collect(const struct scenario *scenario, const struct plan *plan,
                                   const struct outcome *outcome, bool within_too_narrow)
 {
@@ -201,6 +250,7 @@ struct warnings *warnings_collect(const struct scenario *scenario, const struct 
     }
     if (plan) {
         pair_kind(w, plan);
+        blank(w, &plan->cleavage);
         top_viscosity(w, plan);
         geometry(w, &plan->tube);
         warm_volumes(w, &plan->habits);

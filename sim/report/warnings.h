@@ -6,6 +6,7 @@
 #include <stddef.h>
 
 #include "sim/judge/outcome.h"
+#include "sim/judge/worse.h"
 #include "sim/scenario/scenario.h"
 
 struct warnings {
@@ -19,6 +20,10 @@ struct warnings {
 struct warnings *warnings_collect(const struct scenario *scenario, const struct plan *plan,
                                   const struct outcome *outcome, bool within_too_narrow);
 void warnings_free(struct warnings *warnings);
+
+/* Add where more fillings or runs make the plan worse, and what causes it. */
+void warnings_add_worse(struct warnings *warnings, const struct scenario *scenario, const struct worse *worse,
+                        size_t count);
 
 /* What the asked confidence leaves to a false alarm on the side toward
  * `expect`: half of it when both sides are tested. */

@@ -14,6 +14,7 @@ what is not random.
 """
 
 import argparse
+import itertools
 import json
 import math
 import pathlib
@@ -37,13 +38,18 @@ PLACES = {
 
 
 def run_program(program, scenario, studies):
-    """The result of a trial as an object; statuses 0 (done) and 3 (this plan does not resolve) are right."""
+    """The result of a trial as an object, and the order of the bench in its notebook.
+
+    Statuses 0 (done) and 3 (this plan does not resolve) are right.
+    """
     with tempfile.TemporaryDirectory() as folder:
-        command = [program, "trial", str(scenario), "--json", "--studies", str(studies), "--out", folder]
+        notebook = pathlib.Path(folder) / "notebook.csv"
+        command = [program, "trial", str(scenario), "--json", "--studies", str(studies)]
+        command += ["--out", folder, "--times", str(notebook)]
         done = subprocess.run(command, capture_output=True, text=True, check=False)
-    if done.returncode not in (0, 3):
-        raise RuntimeError(f"status {done.returncode}: {done.stderr.strip()}")
-    return json.loads(done.stdout)
+        if done.returncode not in (0, 3):
+            raise RuntimeError(f"status {done.returncode}: {done.stderr.strip()}")
+        return json.loads(done.stdout), peer.read_order(notebook)
 
 
 def lookup(tree, place):
@@ -71,6 +77,13 @@ def compare(outcome, stochastic, nominal):
         found = outcome.get("concentrations", {}).get(series)
         rows.append((f"levels, {series}", None if found is None else len(found), levels, 0.0))
     return rows
+
+
+def compare_order(order, timetable):
+    """Row (name, places where the program's notebook departs from the peer's timetable, 0, 0)."""
+    found = [[row[:3] for row in preparation] for preparation in order]
+    pairs = [pair for two in itertools.zip_longest(found, timetable, fillvalue=[]) for pair in itertools.zip_longest(*two)]
+    return ("timetable, places that differ", float(sum(one != other for one, other in pairs)), 0.0, 0.0)
 
 
 def print_rows(rows):
@@ -101,9 +114,9 @@ def main():
     for scenario in files:
         print(f"{scenario.name}, {options.studies} studies each")
         try:
-            result = run_program(options.program, scenario, options.studies)
-            stochastic, nominal = peer.trial(result["scenario"], options.studies, options.seed)
-            rows = compare(result["outcome"], stochastic, nominal)
+            result, order = run_program(options.program, scenario, options.studies)
+            stochastic, nominal, timetable = peer.trial(result["scenario"], options.studies, options.seed, order)
+            rows = compare(result["outcome"], stochastic, nominal) + [compare_order(order, timetable)]
         except Exception as problem:  # whatever stops a comparison is a failure, never a reason to skip
             print(f"  FAILED: {type(problem).__name__}: {problem}")
             failed += 1

@@ -9,9 +9,11 @@ The last line is `N passed, N failed`; status 1 when any failed.
 import copy
 import math
 import sys
+import tempfile
 from types import SimpleNamespace
 
 import numpy as np
+from scipy.special import gamma
 
 import peer
 
@@ -186,9 +188,12 @@ def check_water_and_tube():
     check("tube: offset/head 0.2, per degree in %", 100 * slope, 0.35, 0.005)  # TABLE
 
 
-def direct_moments(q, delta, cut, nonspecific, neighbours, powers):
-    """Sums over the cleaved chains, length by length, from 2 x 2 matrices along the chain."""
-    longest = int(45.0 / q)
+def cleaved_moments(numbers, delta, cut, nonspecific, neighbours, powers):
+    """Sums over the cleaved chains, length by length, from 2 x 2 matrices along the chain.
+
+    numbers: the number shares of N = 1, 2, ... before.
+    """
+    longest = numbers.size + 1
     follow = delta if neighbours == "independent" else delta / (1.0 - delta)
     after = delta if neighbours == "independent" else 0.0
     move = np.array([[1.0 - follow, follow], [1.0 - after, after]])
@@ -202,10 +207,12 @@ def direct_moments(q, delta, cut, nonspecific, neighbours, powers):
         S[x] = (ahead_f * (1.0 - chance)).sum()
         ahead_f, ahead_g = (ahead_f * (1.0 - chance)) @ move, (ahead_g * (1.0 - chance)) @ move
     x = np.arange(1, longest)
-    before = q * (1.0 - q) ** (x - 1.0)  # number share of N = x
-    longer = (1.0 - q) ** x  # of N > x
-    inside = (1.0 - q) ** (x + 1.0) / q  # sum of P(N) (N - x - 1) over N > x
-    chains = before * S[x - 1] + 2.0 * f[x] * longer + g[x] * inside
+    at_least = np.append(np.cumsum(numbers[::-1])[::-1], [0.0, 0.0])  # share of N >= 1, 2, ...
+    longer = at_least[1 : longest]
+    # the sum of P(N) (N - x - 1) over N > x
+    units_left = np.append(np.cumsum((numbers * x)[::-1])[::-1], 0.0)[1:longest]
+    inside = units_left - longer * (x + 1.0)
+    chains = numbers * S[x - 1] + 2.0 * f[x] * longer + g[x] * inside
     return [float(np.sum(chains * x**power)) for power in powers]
 
 
@@ -242,7 +249,8 @@ def check_scission():
     ):  # fmt: skip
         chains = peer.MostProbable(300)
         scission = (delta, cut, nonspecific, neighbours)
-        mass, moment = direct_moments(1 / 300, *scission, (1.0, 1.0 + a))
+        geometric = (1 - 1 / 300) ** np.arange(45 * 300) / 300
+        mass, moment = cleaved_moments(geometric, *scission, (1.0, 1.0 + a))
         name = f"sums {delta}, {cut}, {nonspecific}, {neighbours}: "
         check(name + "mass", mass / 300, 1.0, 1e-11)  # SERIES
         check(name + "xv'", chains.cleaved_length(a, *scission), (moment / mass) ** (1 / a), 1e-9)  # SERIES
@@ -264,6 +272,128 @@ def check_scission():
         check(f"discrete: inverse for cut {cut}, {neighbours}", worst, 0.0, 1e-11)  # ROUND
         none = peer.discrete_fraction(intact, np.full(9, 1.2), a, cut, neighbours)
         check(f"discrete: no answer for cut {cut}, {neighbours}", np.isnan(none).sum(), 9, 0)
+
+
+def grade_of(distribution, dispersity=None, average="number"):
+    return SimpleNamespace(distribution=distribution, dispersity=dispersity, average=average)
+
+
+GRADES = (  # with the average that is stated
+    grade_of("schulz-zimm", 1.5), grade_of("schulz-zimm", 1.1, "weight"), grade_of("schulz-zimm", 3.0, "viscosity"),
+    grade_of("log-normal", 1.5), grade_of("log-normal", 1.2, "weight"), grade_of("log-normal", 2.0, "viscosity"),
+    grade_of("uniform"),
+)  # fmt: skip
+RULES = ((0.015, 0.95, 5e-5, "excluded"), (0.15, 0.6, 1e-3, "excluded"), (0.02, 0.95, 2e-4, "independent"))
+
+
+def check_chains():
+    a, unit = 0.76, 44.05
+    rows = (  # distribution, xn, p, Mn', Mw', Mv', usual reduction/p - 1 in %
+        (grade_of("schulz-zimm", 1.5), 500, 0.010, 3676.962, 7162.948, 6779.751, -3.444),
+        (grade_of("schulz-zimm", 1.5), 1000, 0.015, 2755.709, 5448.868, 5148.662, -0.980),
+        (grade_of("uniform"), 1000, 0.015, 2755.708, 5443.601, 5144.641, -4.762),
+        (grade_of("uniform"), 2000, 0.005, 8012.733, 15822.838, 14965.405, -7.683),
+    )
+    for grade, xn, p, Mn, Mw, Mv, excess in rows:
+        chains = peer.chains_of(grade, xn, a)
+        scission = (p, 1.0, 0.0, "independent")
+        name = f"scission of {grade.distribution} {xn}, {p}: "
+        found = unit * chains.mean_length / chains.cleaved_sum(0.0, *scission)
+        # the table took xn itself as the parameter of Schulz-Zimm: 2e-8 of Mn' (computed) beside the digits
+        check(name + "Mn'", found, Mn, 5e-4 + 2.2e-8 * Mn)  # TABLE
+        check(name + "Mw'", unit * chains.cleaved_length(1.0, *scission), Mw, 5e-4)  # TABLE
+        cleaved = unit * float(chains.cleaved_length(a, *scission))
+        check(name + "Mv'", cleaved, Mv, 5e-4)  # TABLE
+        usual = peer.continuous_fraction(unit * chains.viscosity_length(a), cleaved, unit, a)
+        check(name + "usual reduction in %", 100 * (usual / p - 1), excess, 5e-4)  # TABLE
+
+    long = peer.chains_of(grade_of("schulz-zimm", 1.5), 20000, a)
+    check("chains: r of Schulz-Zimm, k = 2", long.viscosity_length(a) / long.mean_length, 1.443013, 5e-7)  # TABLE
+    for k in (2.0, 8.0):  # long chains: the ratio of gamma functions
+        long = peer.chains_of(grade_of("schulz-zimm", 1 + 1 / k), 20000, a)
+        exact = (gamma(k + 1 + a) / gamma(k + 1)) ** (1 / a) / k
+        found = long.viscosity_length(a) / long.mean_length
+        check(f"chains: r of Schulz-Zimm, k = {k}", found, exact, 1e-7)  # SERIES
+        found = long.viscosity_length(1) / long.mean_length
+        check(f"chains: dispersity of Schulz-Zimm, k = {k}", found, 1 + 1 / k, 1e-7)  # SERIES
+    long = peer.chains_of(grade_of("log-normal", 1.8), 500, a)
+    for power in (a, 1.0):
+        exact = 1.8 ** ((1 + power) / 2)
+        found = long.viscosity_length(power) / long.mean_length
+        check(f"chains: r({power}) of log-normal, ln D the variance", found, exact, 1e-7)  # SERIES
+    single = peer.chains_of(grade_of("schulz-zimm", 2.0), 700, a)
+    most = peer.MostProbable(700)
+    check("chains: Schulz-Zimm of 2 is most-probable", single.viscosity_length(a), most.viscosity_length(a), 1e-9)  # ROUND
+    for neighbours in ("excluded", "independent"):
+        rule = (0.015, 0.95, 5e-5, neighbours)
+        found = float(single.cleaved_length(a, *rule))
+        check(f"chains: and so when cut, {neighbours}", found, float(most.cleaved_length(a, *rule)), 1e-9)  # ROUND
+    for length, whole in ((1930.4, 1930), (1930.6, 1931)):
+        found = peer.chains_of(grade_of("uniform"), length, a).mean_length
+        check(f"chains: one length, the nearest to {length}", found, whole, 0)
+
+    rng = np.random.default_rng(12)
+    for grade in GRADES:
+        name = f"{grade.distribution} {grade.dispersity or ''} by {grade.average}: "
+        chains = peer.chains_of(grade, 300, a)
+        check(name + "average met", chains.average(grade.average, a), 300, 1e-9)  # ROUND
+        mean = chains.mean_length
+        for rule in RULES:
+            number, mass, moment, second = cleaved_moments(chains.share, *rule, (0.0, 1.0, 1 + a, 2.0))
+            delta, cut, nonspecific, neighbours = rule
+            p = delta * cut + (1 - delta) * nonspecific
+            here = f"{name}{delta}, {neighbours}, "
+            check(here + "mass", mass / mean, 1.0, 1e-10)  # SERIES
+            check(here + "number", chains.cleaved_sum(0.0, *rule) / number, 1.0, 1e-11)  # ROUND
+            check(here + "xv'", chains.cleaved_length(a, *rule) / (moment / mass) ** (1 / a), 1.0, 1e-10)  # ROUND
+            check(here + "1/xn'", number / mass, 1 / mean + p * (1 - 1 / mean), 1e-12)  # ROUND
+            if neighbours == "independent":
+                s = 1 - p
+                G = float(chains.share @ s**chains.x)
+                exact = (1 + s) / (1 - s) - 2 * s * (1 - G) / (mean * (1 - s) ** 2)
+                check(here + "xw', closed form", chains.cleaved_length(1.0, *rule) / exact, 1.0, 1e-11)  # ROUND
+                check(here + "xw', sums", second / mass / exact, 1.0, 1e-10)  # SERIES
+            walked, error = walk(chains, rule, a, rng)
+            check(here + "xv'^a, chains cut one by one", walked / (moment / mean), 1.0, 4.5 * error)  # STAT
+
+        # the table over the chance of a cut against the sums, over more than a study can meet
+        cuts = rng.random(60) ** 3 * 0.2 + 1e-5
+        table = chains.sums_of_power(1 - cuts, 1 + a)
+        direct = np.array([chains.sum_of_power(1 - p, 1 + a) for p in cuts])
+        check(name + "table, 1e-5 to a fifth", np.max(np.abs(table / direct - 1)), 0.0, 1e-7)  # SERIES
+        cut = 0.5 + 0.5 * rng.random(40)
+        table = chains.cleaved_length(a, 0.015, cut, 5e-5, "excluded")
+        direct = np.array([float(chains.cleaved_length(a, 0.015, one, 5e-5, "excluded")) for one in cut])
+        check(name + "table in xv' of a study", np.max(np.abs(table / direct - 1)), 0.0, 1e-13)  # SERIES
+
+
+def walk(chains, rule, a, rng):
+    """The sum of x^(1+a) per unit after cutting 20,000 drawn chains, linkage by linkage.
+
+    Returns it and its relative standard error (over the chains; ratio of sums).
+    """
+    delta, cut, nonspecific, neighbours = rule
+    lengths = rng.choice(chains.x.size, 20000, p=chains.share) + 1
+    linkages = int(lengths.sum())
+    draw = rng.random(linkages)
+    if neighbours == "independent":
+        head = draw < delta
+    else:  # the gaps between two head-to-head linkages are geometric, at least one other linkage between
+        gaps = rng.geometric(delta / (1 - delta), int(linkages * delta * 1.5) + 1000) + 1
+        start = 0 if rng.random() < delta else int(rng.geometric(delta / (1 - delta)))
+        places = start + np.concatenate([[0], np.cumsum(gaps)])
+        head = np.zeros(linkages, dtype=bool)
+        head[places[places < linkages]] = True
+    is_cut = rng.random(linkages) < np.where(head, cut, nonspecific)
+    ends = np.cumsum(lengths)
+    is_cut[ends - 1] = True  # the place after the last unit of a chain, where no linkage is
+    cuts = np.flatnonzero(is_cut) + 1
+    pieces = np.diff(np.concatenate([[0], cuts]))
+    owner = np.searchsorted(ends, cuts)
+    per_chain = np.bincount(owner, pieces ** (1.0 + a), minlength=lengths.size)
+    ratio = per_chain.sum() / lengths.sum()
+    residual = per_chain - ratio * lengths
+    return ratio, float(residual.std() / math.sqrt(lengths.size) / lengths.mean() / ratio)
 
 
 def check_bath():
@@ -373,19 +503,402 @@ def check_plan():
     check("plan: level flask", p.level_volume * 1e6, 50, 1e-9)  # 2 fillings of 18 mL
     # the stock: (0.4 + 0.6 + 0.8) 50 mL and 36 mL
     check("plan: stock flask", p.stock_volume["intact"] * 1e6, 200, 1e-9)
-    check("plan: days", len(p.days), 3, 0)
-    kinds = [f.kind for f in p.days[0]]
+    check("plan: days", p.days, 3, 0)
+    days = p.timetables[0]
+    kinds = [f.kind for f in days[0]]
     check("plan: water opens the day", kinds.index("intact"), 2, 0)
-    check("plan: every filling once", sum(f.kind != "water" for day in p.days for f in day), 16, 0)
-    hours = [
-        sum(1080 + f.runs * (f.run_seconds + 60) for f in day) / 3600 for day in p.days
-    ]
+    check("plan: every filling once", sum(f.kind != "water" for day in days for f in day), 16, 0)
+    hours = [sum(f.seconds for f in day) / 3600 for day in days]
+    first = days[0][0]
+    check("plan: seconds of a filling", first.seconds, 1080 + 3 * (first.portions[0].run_seconds + 60), 1e-9)
     check("plan: longest day", float(max(hours) <= 7.0), 1, 0)
     check("plan: hours of preparation", p.preparation_hours, 3.0 + 6 * 0.1 + 1.0, 1e-12)
     top = peer.specific_viscosity("martin", p.conc["intact"][-1] * p.intrinsic["intact"], 0.45)
     check("plan: relative viscosity of the top", 1 + top, 1.8, 1e-12)  # ROUND
     shared = peer.make_plan(peer.load(resolved(solutions__stock="shared")))
     check("plan: a shared stock makes seven levels", shared.preparation_hours, 1.5 + 0.7 + 1.0, 1e-12)
+
+
+def first_intrinsic(**changes):
+    """[eta]' of a quiet study over the nominal one, with the plan and the scenario."""
+    s = peer.load(resolved(**{**QUIET, **changes}))
+    sim = peer.simulate(s, [s.question.expect], 1, 1)
+    return float(sim.intrinsic["cleaved"][0, 0]) / sim.plan.intrinsic["cleaved"], sim.plan, s
+
+
+def letters(days):
+    """A timetable as text: w water, b blank, i and c with the level from 1; a space between days."""
+    def of(f):
+        levels = "".join(str(portion.level + 1) for portion in f.portions)
+        return f.kind[0] + (levels if f.kind in ("intact", "cleaved") else "")
+
+    return " ".join("".join(of(f) for f in day) for day in days)
+
+
+def check_days():
+    """Timetables laid out by hand; one filling takes 20 min and its runs, each about 300 to 560 s."""
+    even = {  # all efflux times within 2 %: a filling of one run is 18 min + 5 min + 1 min
+        "plan__top": 1.02, "plan__top_cleaved": 1.01, "plan__levels": 2, "plan__runs": 1, "plan__water_runs": 1,
+        "plan__fillings": 2, "plan__water_fillings": 2,
+    }  # fmt: skip
+
+    def laid_out(fillings, deal=None, **changes):
+        """A working day of so many fillings of 24 min, as letters."""
+        day = f"{24.2 * fillings:.0f} min"
+        try:
+            p = peer.make_plan(peer.load(resolved(**{**even, "bench__working_day": day, **changes})), deal)
+        except peer.Impossible:
+            return "impossible"
+        return letters(p.timetables[0])
+
+    blank = {"cleavage__reference": "blank"}
+    bracketed = {"plan__order": "bracketed"}
+    once = {"bench__water_every_day": "no"}
+    for name, found, expected in (
+        ("plain", laid_out(6), "wwi1i1i2i2 wwc1c1c2c2"),
+        ("blank before the first cleaved one of a day", laid_out(7, **blank), "wwi1i1i2i2 wwbbc1c1c2 wwbbc2"),
+        ("blank in the middle of a day", laid_out(9, **blank), "wwi1i1i2i2bbc1 wwbbc1c2c2"),
+        ("blank and its filling do not fit any more", laid_out(8, **blank), "wwi1i1i2i2 wwbbc1c1c2c2"),
+        ("blank once", laid_out(7, **blank, **once), "wwi1i1i2i2 bbc1c1c2c2"),
+        ("blank once, in the middle", laid_out(9, **blank, **once), "wwi1i1i2i2bbc1 c1c2c2"),
+        ("a day too short for the blank", laid_out(4, **blank), "impossible"),
+        ("a day too short for a filling", laid_out(2), "impossible"),
+        ("bracketed", laid_out(6, **bracketed), "wi1i1i2i2w wc1c1c2c2w"),
+        ("three fillings of water bracketed", laid_out(6, **bracketed, plan__water_fillings=3), "wwi1i1i2w wwi2c1c1w wwc2c2w"),
+        ("bracketed with the blank", laid_out(9, **bracketed, **blank), "wi1i1i2i2bbc1w wbbbc1c2c2w".replace("bbb", "bb")),
+        ("one water cannot bracket", laid_out(6, **bracketed, plan__water_fillings=1), "impossible"),
+        ("water once cannot bracket", laid_out(6, **bracketed, **once), "impossible"),
+        ("loading by loading", laid_out(12, plan__dilution="in-tube"), "wwi21i21c21c21"),
+        ("a loading is not split", laid_out(5, plan__dilution="in-tube", plan__water_fillings=1), "wi21i21 wc21c21"),
+    ):  # fmt: skip
+        check(f"days: {name}: {found}", float(found == expected), 1, 0)
+
+    heading = "preparation,day,started,solution,level,concentration [g/dL],filling,run,time [s],temperature [degC],note"
+    dealt = "w i2 c1 c2 i1 c1 | w i2 c2 i1"  # two days of each preparation, as the notebook would show them
+    rows = ["# a comment", heading]
+    for preparation in "12":
+        seen = {}
+        for day, fillings in enumerate(dealt.split(" | ")):
+            for kind in fillings.split():
+                solution = {"w": "water", "b": "blank", "i": "intact", "c": "cleaved"}[kind[0]]
+                seen[kind] = seen.get(kind, 0) + 1
+                for run in "12":
+                    start = f"{preparation},{day + 1 if preparation == '1' else day + 3},0:10,{solution},{kind[1:]}"
+                    rows.append(f"{start},,{1 if kind == 'w' else seen[kind]},{run},300.1,25.00,")
+    with tempfile.NamedTemporaryFile("w", suffix=".csv") as stream:
+        stream.write("\n".join(rows) + "\n")
+        stream.flush()
+        order = peer.read_order(stream.name)
+    check("order: preparations", len(order), 2, 0)
+    check("order: both alike", float(order[0] == order[1]), 1, 0)
+    check("order: fillings", len(order[0]), 10, 0)
+    shuffled = {"plan__order": "shuffled", "plan__preparations": 2, "plan__water_fillings": 1}
+    found = laid_out(6, order, **shuffled)
+    check(f"order: dealt as in the notebook: {found}", float(found == "wi2c1c2i1c1 wi2c2i1"), 1, 0)
+    found = laid_out(6, order, **shuffled, **blank)
+    check(f"order: and the blanks put in: {found}", float(found == "wi2bc1c2i1 wbc1i2c2i1"), 1, 0)
+    s = peer.load(resolved(**{**even, **shuffled, "plan__fillings_cleaved": 3}))
+    try:
+        peer.make_plan(s, order)
+        refused = 0
+    except ValueError:
+        refused = 1
+    check("order: a notebook of other fillings is refused", refused, 1, 0)
+
+
+def check_blank():
+    """Spent reagent, with and without the blank, against the law of the solution by hand."""
+    e, g, v, T = 0.05, 0.03, 0.765e-3, 298.15
+    rho = float(peer.water_density(T))
+    reagent = {"cleavage__reagent_viscosity": "5 %", "cleavage__reagent_density": "3 %"}
+    for diluent in ("water", "blank"):
+        for reference in ("water", "blank"):
+            for once in ({}, {"bench__water_every_day": "no"}):
+                scheme = {**reagent, **once, "cleavage__diluent": diluent, "cleavage__reference": reference}
+                found, p, s = first_intrinsic(**scheme)
+                c = p.conc["cleaved"]
+                y = c * p.intrinsic["cleaved"]
+                w = np.ones(4) if diluent == "blank" else c / c[-1]
+                viscosity = (1 + e * w) * (1 + y * np.exp(0.45 * y))
+                density = (1 + g * w) + c * (1 - v * rho) / rho
+                relative = viscosity / density * (1 + c * (1 - v * rho) / rho)
+                if reference == "blank":
+                    relative = relative / ((1 + e) / (1 + g))
+                exact = peer.extrapolate(c, relative, "martin", "equal") / p.intrinsic["cleaved"]
+                name = f"blank: diluent {diluent}, reference {reference}, {'once' if once else 'every day'}"
+                check(name, found, exact, 1e-11)  # ROUND
+    even = {"cleavage__reagent_viscosity": "5 %", "cleavage__diluent": "blank", "cleavage__reference": "blank"}
+    check("blank: cancels the viscosity of the reagent", quiet(**even), 0.015, 1e-12)  # ROUND
+    # small excess, water as diluent: it goes straight into [eta]' as (e - g)/c_stock
+    tiny = {"cleavage__reagent_viscosity": "0.002 %", "cleavage__reagent_density": "0.001 %"}
+    found, p, _ = first_intrinsic(**tiny, plan__lowest=0.02, plan__extrapolation="huggins", polymer__law="huggins")
+    exact = 1e-5 / p.conc["cleaved"][-1] / p.intrinsic["cleaved"]
+    check("blank: reagent in proportion to c, share of [eta]'", found - 1, exact, 0.01 * exact)  # SERIES
+
+    # what is carried over: into the blank, into the last water of a bracketed day
+    r = 0.04
+    carried = {"bench__carry_over": "4 %", "plan__levels": 1, "plan__fillings": 1, "plan__extrapolation": "single-point",
+               "polymer__interaction": 0.6, "polymer__interaction_cleaved": 0.2}  # fmt: skip
+    for kind, changes in (
+        ("blank", {**reagent, "cleavage__reference": "blank", "plan__water_fillings": 1}), ("water", {"plan__order": "bracketed"}),
+    ):  # fmt: skip
+        s = peer.load(resolved(**{**QUIET, **carried, **changes}))
+        p, notebook = quiet_notebook(s)
+        before = "intact" if kind == "blank" else "cleaved"
+        place = [row[1] for row in notebook].index("blank") if kind == "blank" else len(notebook) - 1
+        k = {"intact": 0.6, "cleaved": 0.2}[before]
+        c = p.conc[before][0]
+        y = (1 - r if before == "cleaved" else 1) * 0 + r * c * p.intrinsic[before]
+        excess = (1 + e, 1 + g) if kind == "blank" else (1, 1)
+        viscosity = peer.water_viscosity(T) * excess[0] * (1 + y * math.exp(k * y))
+        density = rho * excess[1] + r * c * (1 - v * rho)
+        t = float(peer.efflux_time(s.tube, s.tube.constant, s.tube.kinetic, np.array(viscosity / density)))
+        check(f"carry-over: {kind} after {before}", float(notebook[place][3][0, 0, 0]), t, 1e-9)  # ROUND
+        check(f"carry-over: {kind} stands where it should", float(notebook[place][1] == kind), 1, 0)
+    p, notebook = quiet_notebook(peer.load(resolved(**{**QUIET, **carried, "plan__order": "bracketed"})))
+    t0, last = (float(notebook[place][3][0, 0, 0]) for place in (0, -1))
+    s = peer.load(resolved(**{**QUIET, **carried, "plan__order": "bracketed"}))
+    t0, t = (t0 + last) / 2, float(notebook[1][3][0, 0, 0])
+    C = (peer.water_kinematic(T) + s.tube.kinetic / t0**2) / t0
+    relative = (C * t - s.tube.kinetic / t**2) / peer.water_kinematic(T)
+    relative *= 1 + p.conc["intact"][0] * (1 - v * rho) / rho
+    exact = math.sqrt(2 * (relative - 1 - math.log(relative))) / p.conc["intact"][0]
+    found = float(peer.reduce_notebook(s, p, notebook)[1]["intact"][0, 0])
+    check("bracketed: t_0 is the mean of both ends of the day", found / exact, 1, 1e-12)  # ROUND
+
+
+def quiet_notebook(s, n=1, seed=1):
+    """(plan, notebook of the first preparation) of n studies at the expected fraction."""
+    p = peer.make_plan(s)
+    rng = np.random.default_rng(seed)
+    study = peer.draw_study(s, p, n, rng)
+    d = peer.draw_preparation(s, p, study, np.zeros(n), [s.question.expect], rng)
+    notebook, *_ = peer.play(s, p, peer.bath_steps(s, p), d, p.timetables[0], [s.question.expect], rng)
+    return p, notebook
+
+
+def check_in_tube():
+    tube = {"plan__dilution": "in-tube", "plan__fillings": 1, "plan__levels": 3, "plan__lowest": 0.4}
+    p = peer.make_plan(peer.load(resolved(**tube)))
+    for level, volume in enumerate((37.5, 15 / 0.7, 15.0)):
+        check(f"in the tube: volume at level {level + 1}", p.in_tube_volume["intact"][level] * 1e6, volume, 1e-9)  # ROUND
+    loading = p.timetables[0][0][2]
+    check("in the tube: from concentrated to dilute", float([q.level for q in loading.portions] == [2, 1, 0]), 1, 0)
+    added = [q.added * 1e6 for q in loading.portions]
+    for value, expected in zip(added, (0, 15 / 0.7 - 15, 37.5 - 15 / 0.7)):
+        check("in the tube: added", value, expected, 1e-9)  # ROUND
+    runs = sum(3 * (q.run_seconds + 60) for q in loading.portions)
+    check("in the tube: seconds of a loading", loading.seconds, 480 + 3 * 600 + 2 * 180 + runs, 1e-9)  # ROUND
+    check("in the tube: no level flask", p.level_volume, 0, 0)
+    check("in the tube: stock", p.stock_volume["intact"] * 1e6, 25, 1e-9)  # 18 mL
+    check("in the tube: hours of preparation", p.preparation_hours, 4.0, 1e-12)
+    for name, changes in (
+        ("over the capacity", {"tube__capacity": "37 mL"}), ("shared stock", {"solutions__stock": "shared"}),
+        ("constant volume", {"tube__type": "constant-volume"}), ("stock too small", {"solutions__stock_volume": "17 mL",
+         "solutions__stock_tolerance": "0.1 mL"}),
+    ):  # fmt: skip
+        try:
+            peer.make_plan(peer.load(resolved(**tube, **changes)))
+            refused = 0
+        except peer.Impossible:
+            refused = 1
+        check(f"in the tube: {name} is impossible", refused, 1, 0)
+    for neighbours in ("independent", "excluded"):
+        for option in ({}, {"plan__levels_cleaved": 5}, {"plan__fillings": 3}, {"cleavage__diluent": "blank"}):
+            found = quiet(**{**tube, "cleavage__neighbours": neighbours, **option})
+            check(f"study: in the tube, {neighbours}, {option}", found, 0.015, 1e-12)  # ROUND
+
+    # true volumes and what is carried over: by hand, from the same pipette and the same deliveries
+    s = peer.load(resolved(**{
+        **QUIET, **tube, "solutions__delivery_tolerance": "0.5 mL", "solutions__delivery_u": "0.3 mL",
+        "bench__carry_over": "10 %", "cleavage__reagent_viscosity": "5 %", "polymer__interaction_cleaved": 0.3,
+    }))  # fmt: skip
+    p = peer.make_plan(s)
+    rng = np.random.default_rng(8)
+    n = 4
+    study = peer.draw_study(s, p, n, rng)
+    d = peer.draw_preparation(s, p, study, np.zeros(n), [0.015], rng)
+    dealt = []
+    honest = peer.delivered
+
+    def recording(*arguments):
+        dealt.append(honest(*arguments))
+        return dealt[-1]
+
+    peer.delivered = recording
+    notebook, *_ = peer.play(s, p, peer.bath_steps(s, p), d, p.timetables[0], [0.015], rng)
+    peer.delivered = honest
+    worst_time, worst_carry = 0.0, 0.0
+    y_before = None
+    for series, k, volumes in (("intact", 0.45, dealt[:3]), ("cleaved", 0.3, dealt[3:])):
+        y = p.intrinsic[series] * p.conc[series][-1] * np.ones(n)
+        conc = p.conc[series][-1] * np.ones(n)
+        carried_y, carried_c = (0.0, 0.0) if y_before is None else y_before
+        share = 0.1  # the loading before it that day, or the water before the first one
+        in_tube_y, in_tube_c = (1 - share) * y + share * carried_y, (1 - share) * conc + share * carried_c
+        total = 0.0
+        rows = [row for row in notebook if row[1] == series]
+        for step, (row, volume) in enumerate(zip(rows, volumes)):
+            total = total + volume
+            left = volumes[0] / total
+            w = p.conc[series][row[2]] / p.conc[series][-1] if series == "cleaved" else 0.0
+            viscosity = peer.water_viscosity(298.15) * (1 + 0.05 * w)
+            viscosity = viscosity * (1 + in_tube_y * left * np.exp(k * in_tube_y * left))
+            density = peer.solution_density(s, in_tube_c * left, 0.0, 298.15)
+            t = peer.efflux_time(s.tube, s.tube.constant, s.tube.kinetic, viscosity / density)
+            worst_time = max(worst_time, float(np.max(np.abs(row[3][0, 0] / t - 1))))
+        y_before = y * left, conc * left
+    check("in the tube: times by the true volumes, carry-over diluted", worst_time, 0, 1e-12)  # ROUND
+    spread = np.std(np.concatenate(dealt[:1] + dealt[3:4]))
+    check("in the tube: the charges scatter", float(spread > 1e-8), 1, 0)
+    rng = np.random.default_rng(9)
+    study = peer.draw_study(s, p, 40000, rng)
+    first, second = (honest(s, study, 15e-6, rng) for _ in range(2))
+    exact = math.hypot(0.5e-6 / math.sqrt(6), 0.3e-6)
+    check("in the tube: scatter of a delivery", first.std() / exact, 1, 4.5 / math.sqrt(80000))  # STAT
+    common = np.mean((first - 15e-6) * (second - 15e-6)) / (0.5e-6**2 / 6)
+    check("in the tube: what two deliveries share is the pipette", common, 1, 4.5 * (exact**2 / (0.25e-12 / 6)) * 1.1 / 200)  # STAT
+
+    # the liquid's temperature through a loading, from the equation alone
+    s = peer.load(resolved(**{
+        **QUIET, **tube, "bench__room": "15 degC", "bench__lag_time": "6 min", "bench__equilibrate": "4 min",
+        "plan__temperature_record": "none", "plan__runs": 2, "bench__spare_runs": 0,
+        "bath__drift_u": "0 K/h",
+    }))  # fmt: skip
+    p, notebook = quiet_notebook(s)
+    lag, T, room = 360.0, 298.15, 288.15
+    worst = 0.0
+    for series, k in (("intact", 0.45), ("cleaved", 0.45)):
+        rows = [row for row in notebook if row[1] == series]
+        liquid, held = room, 0.0
+        for row in rows:
+            level = row[2]
+            volume = 15.0 * p.conc[series][-1] / p.conc[series][level]
+            if held:
+                liquid = T + (liquid - T) * math.exp(-180 / lag)
+                liquid = (held * liquid + (volume - held) * room) / volume
+            held = volume
+            liquid = T + (liquid - T) * math.exp(-240 / lag)
+            conc = p.conc[series][level]
+            seconds = peer.nominal_time(s, p, series, level)
+            y = conc * p.intrinsic[series]
+            kept = sorted(row[3][:, 0, 0])
+            expected = []
+            for _ in range(2):
+                after = T + (liquid - T) * math.exp(-seconds / lag)
+                mean = T + (liquid - after) * lag / seconds  # of an exponential
+                nu = peer.water_viscosity(mean) * (1 + y * math.exp(k * y)) / peer.solution_density(s, conc, 0.0, mean)
+                expected.append(float(peer.efflux_time(s.tube, s.tube.constant, s.tube.kinetic, np.array(nu))))
+                liquid = T + (after - T) * math.exp(-60 / lag)
+            worst = max(worst, *(abs(one / other - 1) for one, other in zip(kept, sorted(expected))))
+    check("in the tube: times of a liquid that is mixed with a cold one", worst, 0, 1e-12)  # ROUND
+    portion = SimpleNamespace(before=15.0, added=5.0)
+    check("in the tube: mixing temperature", peer.mixed_temperature(portion, 25.0, 17.0), 23.0, 1e-13)  # ROUND
+
+
+def check_repeats():
+    """Preparations and polymers alongside; 4.5 standard errors (STAT)."""
+
+    def spread(**changes):
+        s = peer.load(resolved(**{**QUIET, "plan__levels": 2, "plan__fillings": 1, "plan__runs": 1, **changes}))
+        fractions = [s.question.expect, s.question.against]
+        sim = peer.simulate(s, fractions, 20000, 3)
+        return peer.sd_and_error(sim.delta[0]) + (sim, s)
+
+    def compare(name, one, other, factor):
+        check(name, one[0] / other[0], factor, 4.5 * factor * math.hypot(one[1] / one[0], other[1] / other[0]))
+
+    root3 = math.sqrt(3)
+    for name, changes, factor in (
+        ("cleavage", {"cleavage__conversion": "90 %", "cleavage__conversion_u": "3 %"}, 1 / root3),
+        ("weighing", {"solutions__balance_u": "10 mg"}, 1 / root3),
+        ("delivery", {"solutions__delivery_u": "0.2 mL"}, 1 / root3),
+        ("filling", {"bench__filling_u": "0.1 %"}, 1 / root3),
+        ("day of the bath", {"bath__drift_u": "0.2 K/h", "plan__temperature_record": "none"}, 1 / root3),
+        ("dry content", {"solutions__dry_content_u": "1 %"}, 1),
+        ("pipette", {"solutions__delivery_tolerance": "0.5 mL"}, 1),
+        ("pair", {"polymer__eta_u": "3 %", "polymer__a_u": 0.01}, 1),
+        ("hydrolysis", {"polymer__hydrolysis": "95 %", "polymer__hydrolysis_u": "1 %"}, 1),
+        ("interaction", {"polymer__interaction_u": 0.05}, 1),
+        ("solution offset", {"tube__solution_offset_u": "0.1 %"}, 1),
+    ):  # fmt: skip
+        one, three = spread(**changes), spread(**changes, plan__preparations=3)
+        compare(f"preparations: {name}", three, one, factor)
+    check("preparations: days", three[2].plan.days, 3 * one[2].plan.days, 0)
+    check("preparations: grams", three[2].plan.grams, 3 * one[2].plan.grams, 1e-12)
+    check("preparations: hours", three[2].plan.preparation_hours, 3 * one[2].plan.preparation_hours, 1e-12)
+    check("preparations: clock", three[2].clock.mean(), 3 * one[2].clock.mean(), 1e-9)
+    check("preparations: quiet", quiet(plan__preparations=3), 0.015, 1e-12)  # ROUND
+
+    # one preparation without an answer takes the answer of the study
+    answers = iter([np.array([[0.01, np.nan, 0.02]]), np.array([[0.03, 0.02, 0.04]])])
+    s = peer.load(resolved(plan__preparations=2))
+    p = peer.make_plan(s)
+    honest = peer.reduce_notebook, peer.play
+    series = {"intact": np.ones((1, 3)), "cleaved": np.ones((1, 3))}
+    peer.reduce_notebook = lambda *_: (next(answers), series, series)
+    peer.play = lambda *_: (None, np.full((1, 3), 2), np.full((1, 3), 5.0))
+    rng = np.random.default_rng(1)
+    found = peer.one_polymer(s, p, {}, peer.draw_study(s, p, 3, rng), [0.015], rng)
+    peer.reduce_notebook, peer.play = honest
+    check("preparations: the mean", found.delta[0, 0], 0.02, 1e-15)
+    check("preparations: no answer of one is none", float(np.isnan(found.delta[0, 1])), 1, 0)
+    check("preparations: spare runs add up", found.spare_runs[0, 0], 4, 0)
+
+    alongside = {"question__against_is": "measured"}
+    found = spread(**alongside)
+    check("alongside: quiet difference", found[2].delta[0, 0], 0.002, 1e-12)  # ROUND
+    check("alongside: quiet difference of equal ones", found[2].delta[1, 0], 0.0, 1e-12)  # ROUND
+    figures = peer.figures(found[3], found[2])
+    check("alongside: critical value", figures["critical"][0], 0.0, 1e-12)
+    check("alongside: truth", peer.nominal_figures(found[3], found[2].plan)["truth"], 0.002, 1e-15)
+    usual = {"plan__chain_statistics": "continuous", "cleavage__neighbours": "independent"}
+    for name, changes in (
+        ("dry content", {"solutions__dry_content_u": "1 %"}), ("cleavage", {"cleavage__conversion": "90 %",
+         "cleavage__conversion_u": "2 %"}), ("weighing", {"solutions__balance_u": "10 mg"}),
+        ("filling", {"bench__filling_u": "0.1 %"}),
+    ):  # fmt: skip
+        # two of one fraction, independent: sqrt(2) of one alone
+        two, one = spread(**usual, **changes, **alongside), spread(**usual, **changes)
+        null, single = peer.sd_and_error(two[2].delta[1]), peer.sd_and_error(one[2].delta[1])
+        compare(f"alongside: {name} of each", null, single, math.sqrt(2))
+    for name, changes in (
+        ("eta_u", {"polymer__eta_u": "3 %"}), ("a_u", {"polymer__a_u": 0.01}), ("pipette", {"solutions__delivery_tolerance":
+         "0.5 mL"}), ("hydrolysis", {"polymer__hydrolysis": "95 %", "polymer__hydrolysis_u": "1 %"}),
+        ("interaction", {"polymer__interaction_u": 0.05}), ("kinetic", {"bench__kinetic_u": "30 %"}),
+    ):  # fmt: skip
+        two = spread(**usual, **changes, **alongside)
+        check(f"alongside: {name} shared", float(np.max(np.abs(two[2].delta[1]))), 0, 1e-12)  # ROUND
+    # a shared error in proportion: the difference takes the share (1.5 - 1.3)/1.5 of it
+    two, one = spread(**usual, polymer__eta_u="1 %", **alongside), spread(**usual, polymer__eta_u="1 %")
+    check("alongside: eta_u in proportion", two[0] / one[0], 0.2 / 1.5, 1e-3)  # SERIES
+    s = peer.load(resolved(
+        **alongside, cost__hour=20, cost__owned=["circulator"], grade__price_per_gram=3, tube__price=100, bath__price=1000,
+    ))  # fmt: skip
+    p = peer.make_plan(s)
+    once = peer.make_plan(peer.load(resolved()))
+    check("alongside: days", p.days, 2 * once.days, 0)
+    check("alongside: grams", p.grams, 2 * once.grams, 1e-12)
+    check("alongside: equipment once, what is owned not at all", peer.prices(s, p), 100 + 3 * p.grams, 1e-9)
+    # the difference's own null: share beyond z standard deviations about 0, on the side of expect
+    question = SimpleNamespace(expect=0.012, against=0.014, confidence=0.95, sides="one", against_is="measured")
+    luck = np.random.default_rng(4).standard_normal(100000) * 1e-3
+    figures = peer.power_figures(question, luck - 0.002, luck)
+    check("alongside: plain false alarm about 0", figures["plain_false_alarm"][0], 0.05, 0.003)  # STAT
+    check("alongside: critical value below 0", figures["critical"][0], -1.6449e-3, 2e-5)  # STAT
+    check("alongside: power", figures["power"][0], 0.6388, 0.012)  # STAT
+
+    other = {"plan__material": "other", "polymer__K": "6.66e-4 dL/g"}
+    document = resolved(**other)
+    document["kit"]["materials"] = [{"name": "other", "K": "1 dL/g", "a": 0.64, "hydrolysis": "90 %", "hydrolysis_u": "1 %"}]
+    for key in ("a", "hydrolysis", "hydrolysis_u"):
+        del document["polymer"][key]
+    document["kit"]["grades"][0]["hydrolysis"] = "95 %"
+    s = peer.load(document)
+    check("material: a value given in polymer wins", s.polymer.K, 6.66e-5 * 1000**0.64, 1e-15)
+    check("material: the entry's value", s.polymer.a, 0.64, 0)
+    check("material: the grade's hydrolysis wins over the material's", s.polymer.hydrolysis, 0.95, 0)
+    check("material: the entry's where the grade has none", s.polymer.hydrolysis_u, 0.01, 0)
 
 
 def check_end_to_end():
@@ -464,7 +977,8 @@ def check_noise():
     c = p.conc["intact"]
     relative = 1 + peer.specific_viscosity("martin", c * p.intrinsic["intact"], 0.45)
     row = peer.intercept_weights(c, False) / (relative - 1) * relative
-    seconds = {(f.kind, f.level): f.run_seconds for f in p.days[0]}
+    portions = [(f.kind, portion) for f in p.timetables[0][0] for portion in f.portions]
+    seconds = {(kind, portion.level): portion.run_seconds for kind, portion in portions}
     nu = peer.water_kinematic
     per_kelvin = abs(nu(298.16) - nu(298.14)) / 0.02 / nu(298.15)
 
@@ -506,7 +1020,7 @@ def check_noise():
 def check_judgement():
     """Two normal samples with the same luck: power, critical value and their errors."""
     rng = np.random.default_rng(5)
-    question = SimpleNamespace(expect=0.015, against=0.013, confidence=0.95, sides="one")
+    question = SimpleNamespace(expect=0.015, against=0.013, confidence=0.95, sides="one", against_is="stated")
     n, sd, shift = 4000, 0.002 / 2.926, 0.002
     found = []
     for _ in range(300):
@@ -523,7 +1037,7 @@ def check_judgement():
     check("judgement: error of power over the naive one", ratio, 1.529, 0.05)
     alarm = np.mean([f["plain_false_alarm"][0] for f in found])
     check("judgement: plain false alarm", alarm, 0.05, 4.5 * math.sqrt(0.0475 / n / 300) + 5e-4)  # STAT
-    mirrored = SimpleNamespace(expect=-0.015, against=-0.013, confidence=0.95, sides="one")
+    mirrored = SimpleNamespace(expect=-0.015, against=-0.013, confidence=0.95, sides="one", against_is="stated")
     other = peer.power_figures(mirrored, -(luck + shift), -luck)
     check("judgement: mirrored power", other["power"][0], found[-1]["power"][0], 0)
     check("judgement: mirrored critical value", other["critical"][0], -found[-1]["critical"][0], 1e-15)
@@ -534,8 +1048,9 @@ def check_judgement():
 
 def main():
     for part in (
-        check_units, check_water_and_tube, check_scission, check_bath, check_lines, check_runs,
-        check_plan, check_end_to_end, check_noise, check_judgement,
+        check_units, check_water_and_tube, check_scission, check_chains, check_bath, check_lines, check_runs,
+        check_plan, check_days, check_blank, check_in_tube, check_repeats, check_end_to_end, check_noise,
+        check_judgement,
     ):  # fmt: skip
         part()
     failed = RESULTS.count(False)
