@@ -33,11 +33,12 @@ void polymer_sums_make(struct polymer_sums *sums, double a);
 /* Phi(w). For w >= 1/2 by the series about w = 1, with mu = -ln w
  * (Gamma(2+a) mu^-(2+a) + sum zeta(-(1+a)-k)(-mu)^k/k!, |mu| < 2 pi; e.g.
  * Wood, University of Kent report 15-92 (1992), eq. 9.3), else term by term.
- * `one_minus_w` is given apart so that nothing cancels. Relative 1e-13. */
+ * `one_minus_w` is given apart so that nothing cancels. Relative 1e-13 for w
+ * above -0.7; the terms run out near -0.9. */
 double polymer_phi(const struct polymer_sums *sums, double w, double one_minus_w);
 
 /* ratio^b - 1 for a ratio near 1, without loss: by the binomial series within
- * 1e-3 of 1 (relative 1e-15), else as it stands. */
+ * 1e-3 of 1 (relative 1e-14), else as it stands. */
 double polymer_power_less_one(double ratio, double b);
 
 /* Viscosity average in units, xv, of a most-probable distribution whose number

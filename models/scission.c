@@ -11,11 +11,13 @@ static void excluded_roots(double fraction, struct scission_chance chance, doubl
 {
     const double u = fraction / (1.0 - fraction), cH = chance.head_to_head, cN = chance.other;
     const double b = (1.0 - u) * (1.0 - cN), c = u * (1.0 - cH) * (1.0 - cN);
-    const double width = sqrt(b * b + 4.0 * c);
+    const double apart = 2e-6, width = fmax(sqrt(b * b + 4.0 * c), apart);
     /* d = 1 - root solves d^2 - (2 - b) d + (1 - b - c) = 0 */
     const double at_one = cN + u * cH - u * cH * cN;
     const double large = 0.5 * (2.0 - b + width);
-    one_minus_root[0] = at_one / large;
+    /* where the roots meet (half of all linkages, all cut) they are held apart: S(m)
+     * is then off by the square of that */
+    one_minus_root[0] = width == apart ? large - apart : at_one / large;
     one_minus_root[1] = large;
     const double cut = fraction * cH + (1.0 - fraction) * cN;
     share[1] = (cut - one_minus_root[0]) / (large - one_minus_root[0]);

@@ -244,7 +244,7 @@ def geometric_usual(quantity, xn, p):
     return 100 * (usual(0.76, averages(*cut(xn, p), 0.76)[2], averages(*most_probable(xn), 0.76)[2]) / p - 1)
 
 
-@computes("cut.xv")
+@computes("cut.xv", "cut.half")
 def cut_xv(quantity, neighbours, xn, fraction):
     return averages(*cut(float(xn), float(fraction), excluded=neighbours == "excluded"), 0.76)[2]
 
@@ -525,7 +525,10 @@ def verdict(row):
         return None
     if row.quantity not in COMPUTE:
         return "nothing computes it"
-    got = COMPUTE[row.quantity](row.quantity, *row.arguments)
+    try:
+        got = COMPUTE[row.quantity](row.quantity, *row.arguments)
+    except (ValueError, TypeError, KeyError, StopIteration) as error:
+        return f"cannot be computed: {error}"
     if row.reason == "TEXT":
         return None if got == row.value else f"is {got}"
     return None if abs(got - float(row.value)) <= row.tolerance else f"is {got:.15g}, not {row.value} +- {row.tolerance:.2g}"

@@ -10,15 +10,18 @@ static int has_reason(const char *reason)
 {
     static const char *const known[] = {"TABLE", "ROUND", "SERIES", "STAT", "TEXT"};
     for (size_t i = 0; i < sizeof known / sizeof *known; i++)
-        if (strncmp(reason, known[i], strlen(known[i])) == 0) return 1;
+        if (strncmp(reason, known[i], strlen(known[i])) == 0)
+            return 1;
     return 0;
 }
 
 void check_close_at(double actual, double expected, double tolerance, const char *reason, struct check_place place)
 {
-    if (has_reason(reason) && tolerance >= 0.0 && fabs(actual - expected) <= tolerance) return;
+    if (has_reason(reason) && tolerance >= 0.0 && fabs(actual - expected) <= tolerance)
+        return;
     char words[400];
-    snprintf(words, sizeof words, "%.17g is not %.17g +- %.3g: off by %.3g (%s)", actual, expected, tolerance, actual - expected, reason);
+    snprintf(words, sizeof words, "%.17g is not %.17g +- %.3g: off by %.3g (%s)", actual, expected, tolerance,
+             actual - expected, reason);
     print_error("%s\n", words);
     _fail(place.file, place.line);
 }

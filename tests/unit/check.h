@@ -19,14 +19,14 @@
  *            false-alarm chance stated
  *   TEXT     exact bytes
  * and says the rest behind it. */
-#define check_close(actual, expected, tolerance, reason) \
+#define check_close(actual, expected, tolerance, reason)                                                               \
     check_close_at((actual), (expected), (tolerance), (reason), (struct check_place){__FILE__, __LINE__})
 
 /* The same for a value as it is printed, such as "-0.1712": TABLE. */
 #define check_printed(actual, printed) check_printed_at((actual), (printed), (struct check_place){__FILE__, __LINE__})
 
 /* |actual/expected - 1| <= eps_count times 2.2e-16: ROUND. */
-#define check_round(actual, expected, eps_count) \
+#define check_round(actual, expected, eps_count)                                                                       \
     check_round_at((actual), (expected), (eps_count), (struct check_place){__FILE__, __LINE__})
 
 struct check_place {

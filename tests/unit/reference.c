@@ -16,8 +16,10 @@ static size_t cut(char *line, char *field[FIELDS])
     line[strcspn(line, "\n")] = '\0';
     for (char *at = line; at; n++) {
         char *const tab = strchr(at, '\t');
-        if (tab) *tab = '\0';
-        if (n < FIELDS) field[n] = at;
+        if (tab)
+            *tab = '\0';
+        if (n < FIELDS)
+            field[n] = at;
         at = tab ? tab + 1 : NULL;
     }
     return n;
@@ -26,12 +28,14 @@ static size_t cut(char *line, char *field[FIELDS])
 static struct reference_row row_of(char *const field[FIELDS])
 {
     struct reference_row row;
-    assert_true(strlen(field[1]) < sizeof row.arguments && strlen(field[2]) < sizeof row.value && strlen(field[4]) < sizeof row.reason);
+    assert_true(strlen(field[1]) < sizeof row.arguments && strlen(field[2]) < sizeof row.value &&
+                strlen(field[4]) < sizeof row.reason);
     strcpy(row.arguments, field[1]);
     strcpy(row.value, field[2]);
     strcpy(row.reason, field[4]);
     row.number = strtod(row.value, NULL);
-    row.tolerance = *field[3] ? strtod(field[3], NULL) : check_half_unit(row.value) + 4.0 * DBL_EPSILON * fabs(row.number);
+    row.tolerance =
+        *field[3] ? strtod(field[3], NULL) : check_half_unit(row.value) + 4.0 * DBL_EPSILON * fabs(row.number);
     return row;
 }
 
@@ -40,18 +44,23 @@ size_t reference_read(const char *file, const char *quantity, struct reference_r
     char path[128], line[800], *field[FIELDS];
     snprintf(path, sizeof path, "tests/reference/%s", file);
     FILE *const from = fopen(path, "r");
-    if (!from) fail_msg("%s cannot be opened", path);
+    if (!from)
+        fail_msg("%s cannot be opened", path);
     size_t n = 0;
     bool fits = true;
     while (fits && fgets(line, sizeof line, from)) {
-        if (*line == '#') continue;
+        if (*line == '#')
+            continue;
         fits = strchr(line, '\n') && cut(line, field) == FIELDS;
-        if (!fits || strcmp(field[0], quantity) != 0) continue;
+        if (!fits || strcmp(field[0], quantity) != 0)
+            continue;
         fits = n < room;
-        if (fits) rows[n++] = row_of(field);
+        if (fits)
+            rows[n++] = row_of(field);
     }
     fclose(from);
-    if (!fits || n == 0) fail_msg("%s: %s: %s", path, quantity, fits ? "no such quantity" : "a line that is none, or too many");
+    if (!fits || n == 0)
+        fail_msg("%s: %s: %s", path, quantity, fits ? "no such quantity" : "a line that is none, or too many");
     return n;
 }
 
@@ -70,7 +79,8 @@ const char *reference_word(const struct reference_row *row, size_t i, char word[
         at += *at == ' ';
     }
     const size_t length = strcspn(at, " ");
-    if (length == 0 || length >= 32) fail_msg("'%s' has too few arguments", row->arguments);
+    if (length == 0 || length >= 32)
+        fail_msg("'%s' has too few arguments", row->arguments);
     memcpy(word, at, length);
     word[length] = '\0';
     return word;
@@ -80,12 +90,14 @@ double reference_argument(const struct reference_row *row, size_t i)
 {
     char word[32], *end;
     const double number = strtod(reference_word(row, i, word), &end);
-    if (*end) fail_msg("'%s' is no number", word);
+    if (*end)
+        fail_msg("'%s' is no number", word);
     return number;
 }
 
 void check_row_at(double actual, const struct reference_row *row, struct check_place place)
 {
-    if (!(fabs(actual - row->number) <= row->tolerance)) print_error("row '%s'\n", row->arguments);
+    if (!(fabs(actual - row->number) <= row->tolerance))
+        print_error("row '%s'\n", row->arguments);
     check_close_at(actual, row->number, row->tolerance, row->reason, place);
 }

@@ -48,9 +48,10 @@ static void smallest_that_holds(void **state)
     (void)state;
     static const struct {
         double needed_mL, flask_mL;
-    } pair[] = {{0.0, 10.0}, {9.9, 10.0},     {10.0, 10.0},   {10.01, 25.0},  {25.1, 50.0},    {51.0, 100.0},   {100.0, 100.0}, {100.01, 200.0},
-                {201.0, 250.0}, {251.0, 500.0}, {500.1, 1000.0}, {1000.0, 1000.0}};
-    for (size_t i = 0; i < sizeof pair / sizeof *pair; i++) check_round(glassware_fit(pair[i].needed_mL * mL), pair[i].flask_mL * mL, 4.0);
+    } pair[] = {{0.0, 10.0},    {9.9, 10.0},     {10.0, 10.0},   {10.01, 25.0},  {25.1, 50.0},    {51.0, 100.0},
+                {100.0, 100.0}, {100.01, 200.0}, {201.0, 250.0}, {251.0, 500.0}, {500.1, 1000.0}, {1000.0, 1000.0}};
+    for (size_t i = 0; i < sizeof pair / sizeof *pair; i++)
+        check_round(glassware_fit(pair[i].needed_mL * mL), pair[i].flask_mL * mL, 4.0);
     assert_true(glassware_fit(1000.1 * mL) == 0.0);
     assert_true(glassware_fit((double)INFINITY) == 0.0);
     /* three charges of 30.1 mL and a rest that adds up to 100 mL but for rounding */
@@ -62,7 +63,8 @@ static void standard_uncertainty(void **state)
     (void)state;
     struct reference_row row[ROOM];
     const size_t n = reference_read("glassware.tsv", "flask.A.u", row, ROOM);
-    for (size_t i = 0; i < n; i++) check_row(glassware_standard_uncertainty(reference_argument(&row[i], 0)), &row[i]);
+    for (size_t i = 0; i < n; i++)
+        check_row(glassware_standard_uncertainty(reference_argument(&row[i], 0)), &row[i]);
     check_round(glassware_standard_uncertainty(0.06), 0.06 / sqrt(6.0), 2.0);
 }
 
@@ -74,8 +76,10 @@ static void quam_a2(void **state)
     (void)state;
     const double m = 0.3888, P = 1.0, M = 204.2212, V = 18.64, c = 1000.0 * m * P / (M * V);
     const double glass = glassware_standard_uncertainty(0.03), u_V = hypot(glass, 0.0044);
-    const double share = sqrt(pow(0.00013 / m, 2) + pow(0.00029 / P, 2) + pow(0.0038 / M, 2) + pow(u_V / V, 2) + pow(0.0005, 2));
-    const struct reference_row conc = reference_one("glassware.tsv", "quam.A2"), u = reference_one("glassware.tsv", "quam.A2.u");
+    const double share =
+        sqrt(pow(0.00013 / m, 2) + pow(0.00029 / P, 2) + pow(0.0038 / M, 2) + pow(u_V / V, 2) + pow(0.0005, 2));
+    const struct reference_row conc = reference_one("glassware.tsv", "quam.A2"),
+                               u = reference_one("glassware.tsv", "quam.A2.u");
     check_printed(u_V, "0.013");
     check_row(c, &conc);
     check_row(c * share, &u);

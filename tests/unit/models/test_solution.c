@@ -49,7 +49,8 @@ static void inverse_has_a_closed_form(void **state)
         for (double specific = 0.01; specific < 5.0; specific *= 1.3) {
             const double k = 0.1 * i;
             check_round(solution_coil_volume(SOLUTION_MARTIN, k, specific), gsl_sf_lambert_W0(k * specific) / k, 16.0);
-            check_round(solution_coil_volume(SOLUTION_HUGGINS, k, specific), 2.0 * specific / (1.0 + sqrt(1.0 + 4.0 * k * specific)), 8.0);
+            check_round(solution_coil_volume(SOLUTION_HUGGINS, k, specific),
+                        2.0 * specific / (1.0 + sqrt(1.0 + 4.0 * k * specific)), 8.0);
         }
 }
 

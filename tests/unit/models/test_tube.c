@@ -27,7 +27,8 @@ static void kinetic_of_flared_ends(void **state)
 {
     (void)state;
     const struct reference_row row = reference_one("tube.tsv", "kinetic.flared");
-    const double E = tube_kinetic_flared(argument(&row, 0, mL), argument(&row, 1, mm), argument(&row, 2, mm), argument(&row, 3, mm2));
+    const double E = tube_kinetic_flared(argument(&row, 0, mL), argument(&row, 1, mm), argument(&row, 2, mm),
+                                         argument(&row, 3, mm2));
     check_row(E / mm2, &row);
 }
 
@@ -63,7 +64,8 @@ static void constant_by_poiseuille(void **state)
     struct reference_row row[ROOM];
     const size_t n = reference_read("tube.tsv", "poiseuille", row, ROOM);
     for (size_t i = 0; i < n; i++) {
-        const double C = tube_constant_poiseuille(argument(&row[i], 0, mm), argument(&row[i], 1, mm), argument(&row[i], 2, mL), argument(&row[i], 3, mm));
+        const double C = tube_constant_poiseuille(argument(&row[i], 0, mm), argument(&row[i], 1, mm),
+                                                  argument(&row[i], 2, mL), argument(&row[i], 3, mm));
         check_row(C / mm2, &row[i]);
     }
 }
@@ -79,8 +81,10 @@ static void constants_of_the_kit(void **state)
     size_t tubes = 0;
     for (const struct record *tube = scenario_kit(built_in)->first[KEYS_TUBES]; tube; tube = tube->next, tubes++) {
         const double bore_m = record_number(tube, "bore");
-        const double C = tube_constant_poiseuille(bore_m, record_number(tube, "head"), record_number(tube, "bulb_volume"), record_number(tube, "length"));
-        check_close(C / record_number(tube, "constant"), 1.0, 4.0 * 0.005 * mm / bore_m, "TABLE half a unit of the bore's last digit, times 4");
+        const double C = tube_constant_poiseuille(bore_m, record_number(tube, "head"),
+                                                  record_number(tube, "bulb_volume"), record_number(tube, "length"));
+        check_close(C / record_number(tube, "constant"), 1.0, 4.0 * 0.005 * mm / bore_m,
+                    "TABLE half a unit of the bore's last digit, times 4");
     }
     assert_int_equal(tubes, 7);
     scenario_free(built_in);
@@ -102,7 +106,8 @@ static void times_of_water(void **state)
     struct reference_row row[ROOM];
     double share;
     size_t n = reference_read("tube.tsv", "water.time", row, ROOM);
-    for (size_t i = 0; i < n; i++) check_row(water_time(&row[i], &share), &row[i]);
+    for (size_t i = 0; i < n; i++)
+        check_row(water_time(&row[i], &share), &row[i]);
     n = reference_read("tube.tsv", "water.kinetic", row, ROOM);
     for (size_t i = 0; i < n; i++) {
         water_time(&row[i], &share);
@@ -136,7 +141,8 @@ static void head_factor_is_its_series(void **state)
         const double theta = 0.001 * i;
         for (int j = 0; j < 3; j++) {
             const double offset = 0.1 * j, share = 0.001 * j;
-            check_close(tube_head_factor(theta, offset, share), (cos(theta) + offset * sin(theta)) * (1.0 - share), 1e-14, "SERIES and rounding");
+            check_close(tube_head_factor(theta, offset, share), (cos(theta) + offset * sin(theta)) * (1.0 - share),
+                        1e-14, "SERIES and rounding");
         }
     }
 }

@@ -15,7 +15,8 @@ static void hold(const char *quantity, double (*law)(double))
 {
     struct reference_row row[ROOM];
     const size_t n = reference_read("water.tsv", quantity, row, ROOM);
-    for (size_t i = 0; i < n; i++) check_row(law(reference_argument(&row[i], 0)), &row[i]);
+    for (size_t i = 0; i < n; i++)
+        check_row(law(reference_argument(&row[i], 0)), &row[i]);
 }
 
 static double viscosity_uPa_s(double T_K)
@@ -69,7 +70,8 @@ static void viscosity_is_near_the_full_formula(void **state)
     const size_t n = reference_read("water.tsv", "viscosity.full", row, ROOM);
     for (size_t i = 0; i < n; i++) {
         const double t_C = reference_argument(&row[i], 0);
-        check_close(viscosity_mPa_s(t_C) / row[i].number, 1.0, 3.0e-5, "SERIES the short formula stands for the full one");
+        check_close(viscosity_mPa_s(t_C) / row[i].number, 1.0, 3.0e-5,
+                    "SERIES the short formula stands for the full one");
     }
 }
 
@@ -103,7 +105,8 @@ static void kinematic_is_the_ratio(void **state)
     (void)state;
     const struct water_fit fit = water_fit_make();
     for (double T_K = WATER_MIN_K; T_K <= WATER_MAX_K; T_K += 2.5)
-        check_close(water_fit_kinematic(&fit, T_K) * water_density(T_K) / water_viscosity(T_K), 1.0, 1e-12, "SERIES Chebyshev, 18 terms");
+        check_close(water_fit_kinematic(&fit, T_K) * water_density(T_K) / water_viscosity(T_K), 1.0, 1e-12,
+                    "SERIES Chebyshev, 18 terms");
     check_printed(1e6 * water_fit_kinematic(&fit, 298.15), "0.89263"); /* 0.889997/0.997047022, by hand */
 }
 
@@ -123,14 +126,10 @@ static void time_per_kelvin(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test(viscosity_is_the_release),
-        cmocka_unit_test(viscosity_is_that_of_the_library),
-        cmocka_unit_test(viscosity_is_the_standard),
-        cmocka_unit_test(viscosity_is_near_the_full_formula),
-        cmocka_unit_test(slope_of_viscosity),
-        cmocka_unit_test(density_is_cipm),
-        cmocka_unit_test(fit_follows_the_law),
-        cmocka_unit_test(kinematic_is_the_ratio),
+        cmocka_unit_test(viscosity_is_the_release),  cmocka_unit_test(viscosity_is_that_of_the_library),
+        cmocka_unit_test(viscosity_is_the_standard), cmocka_unit_test(viscosity_is_near_the_full_formula),
+        cmocka_unit_test(slope_of_viscosity),        cmocka_unit_test(density_is_cipm),
+        cmocka_unit_test(fit_follows_the_law),       cmocka_unit_test(kinematic_is_the_ratio),
         cmocka_unit_test(time_per_kelvin),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
