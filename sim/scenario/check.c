@@ -69,9 +69,9 @@ static void check_grade(const struct reading *r, const struct record *grade)
             complain_at(r->out, d->place, "`dispersity` is %s; uniform chains have 1 and no other", d->text);
         break;
     default:
-        if (!given)
+        if (d->state == VALUE_ABSENT)
             complain_at(r->out, kind->place, "`distribution: %s` needs a `dispersity`, for example 1.8", kind->text);
-        else if (d->number < 1.001)
+        else if (given && d->number < 1.001)
             complain_at(r->out, d->place, "`dispersity` is %s; with %s it must be at least 1.001", d->text, kind->text);
         break;
     }

@@ -351,17 +351,17 @@ class WholeLengths:
         return self.viscosity_length(1.0 if average == "weight" else a)
 
     def sum_of_power(self, base, power):
-        """The sum of x^power over the chains that one power of S leaves; base a scalar below 1."""
-        size = abs(base)
+        """The sum of x^power over the chains that one power of S leaves; base a scalar in 0 to 1.
+
+        Powers below exp(-50) are left out.
+        """
+        log_base = math.log(max(base, 1e-300))
         count = self.x.size
-        if size < 1.0:
-            count = min(count, 2 + int(50.0 / -math.log(max(size, 1e-300))))
+        if log_base < 0.0:
+            count = min(count, 2 + int(-50.0 / log_base))
         x, rest = self.x[:count], 1.0 - base
         chains = self.share[:count] + rest * (2.0 * self.longer[:count] + rest * self.inside[:count])
-        powers = np.exp((x - 1.0) * math.log(max(size, 1e-300)))
-        if base < 0.0:
-            powers[1::2] *= -1.0
-        return float(np.sum(chains * powers * x**power))
+        return float(np.sum(chains * np.exp((x - 1.0) * log_base) * x**power))
 
     def sums_of_power(self, base, power):
         """The same for many bases, shape (..): each by itself, or by a table where there are more.
@@ -423,7 +423,8 @@ def schulz_zimm_numbers(scale, k):
 def log_normal_numbers(scale, variance):
     """Number shares with ln N normal about ln(scale), exp(-(ln N/scale)^2/(2 variance))/N.
 
-    Not normalised; as far as 8.6 standard deviations of the distribution weighted with N^2.
+    Not normalised; as far as 8.6 standard deviations of the distribution weighted with N^2. (A
+    factor N more or less only moves the scale: it is the same family by number and by mass.)
     """
     longest = math.ceil(scale * math.exp(2.0 * variance + 8.6 * math.sqrt(variance))) + 2
     N = np.arange(1.0, longest + 1.0)

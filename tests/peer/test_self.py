@@ -337,6 +337,7 @@ def check_chains():
         name = f"{grade.distribution} {grade.dispersity or ''} by {grade.average}: "
         chains = peer.chains_of(grade, 300, a)
         check(name + "average met", chains.average(grade.average, a), 300, 1e-9)  # ROUND
+        whole, chains = chains, peer.WholeLengths(chains.share[:6000])  # the longest left out: sums in Python
         mean = chains.mean_length
         for rule in RULES:
             number, mass, moment, second = cleaved_moments(chains.share, *rule, (0.0, 1.0, 1 + a, 2.0))
@@ -357,6 +358,7 @@ def check_chains():
             check(here + "xv'^a, chains cut one by one", walked / (moment / mean), 1.0, 4.5 * error)  # STAT
 
         # the table over the chance of a cut against the sums, over more than a study can meet
+        chains = whole
         cuts = rng.random(60) ** 3 * 0.2 + 1e-5
         table = chains.sums_of_power(1 - cuts, 1 + a)
         direct = np.array([chains.sum_of_power(1 - p, 1 + a) for p in cuts])
@@ -364,7 +366,7 @@ def check_chains():
         cut = 0.5 + 0.5 * rng.random(40)
         table = chains.cleaved_length(a, 0.015, cut, 5e-5, "excluded")
         direct = np.array([float(chains.cleaved_length(a, 0.015, one, 5e-5, "excluded")) for one in cut])
-        check(name + "table in xv' of a study", np.max(np.abs(table / direct - 1)), 0.0, 1e-13)  # SERIES
+        check(name + "table in xv' of a study", np.max(np.abs(table / direct - 1)), 0.0, 1e-12)  # SERIES
 
 
 def walk(chains, rule, a, rng):
@@ -565,7 +567,7 @@ def check_days():
         ("a day too short for a filling", laid_out(2), "impossible"),
         ("bracketed", laid_out(6, **bracketed), "wi1i1i2i2w wc1c1c2c2w"),
         ("three fillings of water bracketed", laid_out(6, **bracketed, plan__water_fillings=3), "wwi1i1i2w wwi2c1c1w wwc2c2w"),
-        ("bracketed with the blank", laid_out(9, **bracketed, **blank), "wi1i1i2i2bbc1w wbbbc1c2c2w".replace("bbb", "bb")),
+        ("bracketed with the blank", laid_out(9, **bracketed, **blank), "wi1i1i2i2bbc1w wbbc1c2c2w"),
         ("one water cannot bracket", laid_out(6, **bracketed, plan__water_fillings=1), "impossible"),
         ("water once cannot bracket", laid_out(6, **bracketed, **once), "impossible"),
         ("loading by loading", laid_out(12, plan__dilution="in-tube"), "wwi21i21c21c21"),
@@ -648,7 +650,7 @@ def check_blank():
         place = [row[1] for row in notebook].index("blank") if kind == "blank" else len(notebook) - 1
         k = {"intact": 0.6, "cleaved": 0.2}[before]
         c = p.conc[before][0]
-        y = (1 - r if before == "cleaved" else 1) * 0 + r * c * p.intrinsic[before]
+        y = r * c * p.intrinsic[before]
         excess = (1 + e, 1 + g) if kind == "blank" else (1, 1)
         viscosity = peer.water_viscosity(T) * excess[0] * (1 + y * math.exp(k * y))
         density = rho * excess[1] + r * c * (1 - v * rho)
@@ -728,17 +730,15 @@ def check_in_tube():
     peer.delivered = recording
     notebook, *_ = peer.play(s, p, peer.bath_steps(s, p), d, p.timetables[0], [0.015], rng)
     peer.delivered = honest
-    worst_time, worst_carry = 0.0, 0.0
-    y_before = None
+    worst_time = 0.0
+    before = (0.0, 0.0)  # water before the first loading
     for series, k, volumes in (("intact", 0.45, dealt[:3]), ("cleaved", 0.3, dealt[3:])):
         y = p.intrinsic[series] * p.conc[series][-1] * np.ones(n)
         conc = p.conc[series][-1] * np.ones(n)
-        carried_y, carried_c = (0.0, 0.0) if y_before is None else y_before
-        share = 0.1  # the loading before it that day, or the water before the first one
-        in_tube_y, in_tube_c = (1 - share) * y + share * carried_y, (1 - share) * conc + share * carried_c
+        in_tube_y, in_tube_c = 0.9 * y + 0.1 * before[0], 0.9 * conc + 0.1 * before[1]
         total = 0.0
         rows = [row for row in notebook if row[1] == series]
-        for step, (row, volume) in enumerate(zip(rows, volumes)):
+        for row, volume in zip(rows, volumes):
             total = total + volume
             left = volumes[0] / total
             w = p.conc[series][row[2]] / p.conc[series][-1] if series == "cleaved" else 0.0
@@ -747,23 +747,23 @@ def check_in_tube():
             density = peer.solution_density(s, in_tube_c * left, 0.0, 298.15)
             t = peer.efflux_time(s.tube, s.tube.constant, s.tube.kinetic, viscosity / density)
             worst_time = max(worst_time, float(np.max(np.abs(row[3][0, 0] / t - 1))))
-        y_before = y * left, conc * left
+        before = y * left, conc * left
     check("in the tube: times by the true volumes, carry-over diluted", worst_time, 0, 1e-12)  # ROUND
-    spread = np.std(np.concatenate(dealt[:1] + dealt[3:4]))
-    check("in the tube: the charges scatter", float(spread > 1e-8), 1, 0)
+    check("in the tube: three deliveries for each loading", len(dealt), 6, 0)
+    check("in the tube: the charges scatter", float(np.std(dealt[0]) > 1e-7), 1, 0)
     rng = np.random.default_rng(9)
     study = peer.draw_study(s, p, 40000, rng)
     first, second = (honest(s, study, 15e-6, rng) for _ in range(2))
     exact = math.hypot(0.5e-6 / math.sqrt(6), 0.3e-6)
     check("in the tube: scatter of a delivery", first.std() / exact, 1, 4.5 / math.sqrt(80000))  # STAT
     common = np.mean((first - 15e-6) * (second - 15e-6)) / (0.5e-6**2 / 6)
-    check("in the tube: what two deliveries share is the pipette", common, 1, 4.5 * (exact**2 / (0.25e-12 / 6)) * 1.1 / 200)  # STAT
+    error = math.sqrt(1 + (exact**2 / (0.5e-6**2 / 6)) ** 2) / 200  # of a product of correlated normals
+    check("in the tube: what two deliveries share is the pipette", common, 1, 4.5 * error)  # STAT
 
     # the liquid's temperature through a loading, from the equation alone
     s = peer.load(resolved(**{
         **QUIET, **tube, "bench__room": "15 degC", "bench__lag_time": "6 min", "bench__equilibrate": "4 min",
         "plan__temperature_record": "none", "plan__runs": 2, "bench__spare_runs": 0,
-        "bath__drift_u": "0 K/h",
     }))  # fmt: skip
     p, notebook = quiet_notebook(s)
     lag, T, room = 360.0, 298.15, 288.15
@@ -897,8 +897,8 @@ def check_repeats():
     s = peer.load(document)
     check("material: a value given in polymer wins", s.polymer.K, 6.66e-5 * 1000**0.64, 1e-15)
     check("material: the entry's value", s.polymer.a, 0.64, 0)
-    check("material: the grade's hydrolysis wins over the material's", s.polymer.hydrolysis, 0.95, 0)
-    check("material: the entry's where the grade has none", s.polymer.hydrolysis_u, 0.01, 0)
+    check("material: the grade's hydrolysis wins over the material's", s.polymer.hydrolysis, 0.95, 1e-15)
+    check("material: the entry's where the grade has none", s.polymer.hydrolysis_u, 0.01, 1e-15)
 
 
 def check_end_to_end():
