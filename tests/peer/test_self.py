@@ -323,7 +323,8 @@ def check_chains():
         check(f"chains: r({power}) of log-normal, ln D the variance", found, exact, 1e-7)  # SERIES
     single = peer.chains_of(grade_of("schulz-zimm", 2.0), 700, a)
     most = peer.MostProbable(700)
-    check("chains: Schulz-Zimm of 2 is most-probable", single.viscosity_length(a), most.viscosity_length(a), 1e-9)  # ROUND
+    found, exact = single.viscosity_length(a), most.viscosity_length(a)
+    check("chains: Schulz-Zimm of 2 is most-probable", found, exact, 1e-9)  # ROUND
     for neighbours in ("excluded", "independent"):
         rule = (0.015, 0.95, 5e-5, neighbours)
         found = float(single.cleaved_length(a, *rule))
@@ -566,7 +567,10 @@ def check_days():
         ("a day too short for the blank", laid_out(4, **blank), "impossible"),
         ("a day too short for a filling", laid_out(2), "impossible"),
         ("bracketed", laid_out(6, **bracketed), "wi1i1i2i2w wc1c1c2c2w"),
-        ("three fillings of water bracketed", laid_out(6, **bracketed, plan__water_fillings=3), "wwi1i1i2w wwi2c1c1w wwc2c2w"),
+        (
+            "three fillings of water bracketed", laid_out(6, **bracketed, plan__water_fillings=3),
+            "wwi1i1i2w wwi2c1c1w wwc2c2w",
+        ),
         ("bracketed with the blank", laid_out(9, **bracketed, **blank), "wi1i1i2i2bbc1w wbbc1c2c2w"),
         ("one water cannot bracket", laid_out(6, **bracketed, plan__water_fillings=1), "impossible"),
         ("water once cannot bracket", laid_out(6, **bracketed, **once), "impossible"),
@@ -575,7 +579,8 @@ def check_days():
     ):  # fmt: skip
         check(f"days: {name}: {found}", float(found == expected), 1, 0)
 
-    heading = "preparation,day,started,solution,level,concentration [g/dL],filling,run,time [s],temperature [degC],note"
+    heading = "preparation,day,started,solution,level,concentration [g/dL],filling,run,time [s],"
+    heading += "temperature [degC],note"
     dealt = "w i2 c1 c2 i1 c1 | w i2 c2 i1"  # two days of each preparation, as the notebook would show them
     rows = ["# a comment", heading]
     for preparation in "12":
@@ -639,11 +644,14 @@ def check_blank():
 
     # what is carried over: into the blank, into the last water of a bracketed day
     r = 0.04
-    carried = {"bench__carry_over": "4 %", "plan__levels": 1, "plan__fillings": 1, "plan__extrapolation": "single-point",
-               "polymer__interaction": 0.6, "polymer__interaction_cleaved": 0.2}  # fmt: skip
+    carried = {
+        "bench__carry_over": "4 %", "plan__levels": 1, "plan__fillings": 1, "plan__extrapolation": "single-point",
+        "polymer__interaction": 0.6, "polymer__interaction_cleaved": 0.2,
+    }  # fmt: skip
     for kind, changes in (
-        ("blank", {**reagent, "cleavage__reference": "blank", "plan__water_fillings": 1}), ("water", {"plan__order": "bracketed"}),
-    ):  # fmt: skip
+        ("blank", {**reagent, "cleavage__reference": "blank", "plan__water_fillings": 1}),
+        ("water", {"plan__order": "bracketed"}),
+    ):
         s = peer.load(resolved(**{**QUIET, **carried, **changes}))
         p, notebook = quiet_notebook(s)
         before = "intact" if kind == "blank" else "cleaved"
@@ -683,7 +691,8 @@ def check_in_tube():
     tube = {"plan__dilution": "in-tube", "plan__fillings": 1, "plan__levels": 3, "plan__lowest": 0.4}
     p = peer.make_plan(peer.load(resolved(**tube)))
     for level, volume in enumerate((37.5, 15 / 0.7, 15.0)):
-        check(f"in the tube: volume at level {level + 1}", p.in_tube_volume["intact"][level] * 1e6, volume, 1e-9)  # ROUND
+        found = p.in_tube_volume["intact"][level] * 1e6
+        check(f"in the tube: volume at level {level + 1}", found, volume, 1e-9)  # ROUND
     loading = p.timetables[0][0][2]
     check("in the tube: from concentrated to dilute", float([q.level for q in loading.portions] == [2, 1, 0]), 1, 0)
     added = [q.added * 1e6 for q in loading.portions]
@@ -695,10 +704,11 @@ def check_in_tube():
     check("in the tube: stock", p.stock_volume["intact"] * 1e6, 25, 1e-9)  # 18 mL
     check("in the tube: hours of preparation", p.preparation_hours, 4.0, 1e-12)
     for name, changes in (
-        ("over the capacity", {"tube__capacity": "37 mL"}), ("shared stock", {"solutions__stock": "shared"}),
-        ("constant volume", {"tube__type": "constant-volume"}), ("stock too small", {"solutions__stock_volume": "17 mL",
-         "solutions__stock_tolerance": "0.1 mL"}),
-    ):  # fmt: skip
+        ("over the capacity", {"tube__capacity": "37 mL"}),
+        ("shared stock", {"solutions__stock": "shared"}),
+        ("constant volume", {"tube__type": "constant-volume"}),
+        ("stock too small", {"solutions__stock_volume": "17 mL", "solutions__stock_tolerance": "0.1 mL"}),
+    ):
         try:
             peer.make_plan(peer.load(resolved(**tube, **changes)))
             refused = 0
@@ -787,7 +797,8 @@ def check_in_tube():
             for _ in range(2):
                 after = T + (liquid - T) * math.exp(-seconds / lag)
                 mean = T + (liquid - after) * lag / seconds  # of an exponential
-                nu = peer.water_viscosity(mean) * (1 + y * math.exp(k * y)) / peer.solution_density(s, conc, 0.0, mean)
+                viscosity = peer.water_viscosity(mean) * (1 + y * math.exp(k * y))
+                nu = viscosity / peer.solution_density(s, conc, 0.0, mean)
                 expected.append(float(peer.efflux_time(s.tube, s.tube.constant, s.tube.kinetic, np.array(nu))))
                 liquid = T + (after - T) * math.exp(-60 / lag)
             worst = max(worst, *(abs(one / other - 1) for one, other in zip(kept, sorted(expected))))
@@ -854,26 +865,31 @@ def check_repeats():
     check("alongside: truth", peer.nominal_figures(found[3], found[2].plan)["truth"], 0.002, 1e-15)
     usual = {"plan__chain_statistics": "continuous", "cleavage__neighbours": "independent"}
     for name, changes in (
-        ("dry content", {"solutions__dry_content_u": "1 %"}), ("cleavage", {"cleavage__conversion": "90 %",
-         "cleavage__conversion_u": "2 %"}), ("weighing", {"solutions__balance_u": "10 mg"}),
+        ("dry content", {"solutions__dry_content_u": "1 %"}),
+        ("cleavage", {"cleavage__conversion": "90 %", "cleavage__conversion_u": "2 %"}),
+        ("weighing", {"solutions__balance_u": "10 mg"}),
         ("filling", {"bench__filling_u": "0.1 %"}),
-    ):  # fmt: skip
+    ):
         # two of one fraction, independent: sqrt(2) of one alone
         two, one = spread(**usual, **changes, **alongside), spread(**usual, **changes)
         null, single = peer.sd_and_error(two[2].delta[1]), peer.sd_and_error(one[2].delta[1])
         compare(f"alongside: {name} of each", null, single, math.sqrt(2))
     for name, changes in (
-        ("eta_u", {"polymer__eta_u": "3 %"}), ("a_u", {"polymer__a_u": 0.01}), ("pipette", {"solutions__delivery_tolerance":
-         "0.5 mL"}), ("hydrolysis", {"polymer__hydrolysis": "95 %", "polymer__hydrolysis_u": "1 %"}),
-        ("interaction", {"polymer__interaction_u": 0.05}), ("kinetic", {"bench__kinetic_u": "30 %"}),
-    ):  # fmt: skip
+        ("eta_u", {"polymer__eta_u": "3 %"}),
+        ("a_u", {"polymer__a_u": 0.01}),
+        ("pipette", {"solutions__delivery_tolerance": "0.5 mL"}),
+        ("hydrolysis", {"polymer__hydrolysis": "95 %", "polymer__hydrolysis_u": "1 %"}),
+        ("interaction", {"polymer__interaction_u": 0.05}),
+        ("kinetic", {"bench__kinetic_u": "30 %"}),
+    ):
         two = spread(**usual, **changes, **alongside)
         check(f"alongside: {name} shared", float(np.max(np.abs(two[2].delta[1]))), 0, 1e-12)  # ROUND
     # a shared error in proportion: the difference takes the share (1.5 - 1.3)/1.5 of it
     two, one = spread(**usual, polymer__eta_u="1 %", **alongside), spread(**usual, polymer__eta_u="1 %")
     check("alongside: eta_u in proportion", two[0] / one[0], 0.2 / 1.5, 1e-3)  # SERIES
     s = peer.load(resolved(
-        **alongside, cost__hour=20, cost__owned=["circulator"], grade__price_per_gram=3, tube__price=100, bath__price=1000,
+        **alongside, cost__hour=20, cost__owned=["circulator"], grade__price_per_gram=3, tube__price=100,
+        bath__price=1000,
     ))  # fmt: skip
     p = peer.make_plan(s)
     once = peer.make_plan(peer.load(resolved()))
@@ -890,7 +906,8 @@ def check_repeats():
 
     other = {"plan__material": "other", "polymer__K": "6.66e-4 dL/g"}
     document = resolved(**other)
-    document["kit"]["materials"] = [{"name": "other", "K": "1 dL/g", "a": 0.64, "hydrolysis": "90 %", "hydrolysis_u": "1 %"}]
+    entry = {"name": "other", "K": "1 dL/g", "a": 0.64, "hydrolysis": "90 %", "hydrolysis_u": "1 %"}
+    document["kit"]["materials"] = [entry]
     for key in ("a", "hydrolysis", "hydrolysis_u"):
         del document["polymer"][key]
     document["kit"]["grades"][0]["hydrolysis"] = "95 %"
