@@ -9,7 +9,7 @@ order of the bench: it must be the peer's own timetable; how a shuffled order wa
 there. The last line is `N passed, N failed`; status 1 when any comparison failed.
 
 Tolerances. STAT: 4 combined standard errors; a right program fails one comparison with the chance
-6.3e-5, all of the 450 such comparisons of the 25 scenarios together with at most 3 %. Both
+6.3e-5, all of the 470 such comparisons of the 25 scenarios together with at most 3 %. Both
 seeds are fixed, so the answer does not change from one run to the next. ROUND: 1e-9, relative, for
 what is not random.
 """
