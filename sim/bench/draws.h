@@ -46,15 +46,30 @@ enum draws_run {
     DRAWS_RUN
 };
 
+/* Groups of deviates, as a budget of errors names them. */
+enum draws_group {
+    DRAWS_GROUP_PAIR, DRAWS_GROUP_CALIBRATION, DRAWS_GROUP_KINETIC, DRAWS_GROUP_OFFSET, DRAWS_GROUP_DILUTION, DRAWS_GROUP_HYDROLYSIS,
+    DRAWS_GROUP_INTERACTION, DRAWS_GROUP_DRY_CONTENT, DRAWS_GROUP_CONVERSION, DRAWS_GROUP_WEIGHING, DRAWS_GROUP_DAYS, DRAWS_GROUP_FLUCTUATION,
+    DRAWS_GROUP_TILT, DRAWS_GROUP_CHARGE, DRAWS_GROUP_FILLING, DRAWS_GROUP_GRADIENT, DRAWS_GROUP_READING, DRAWS_GROUP_HAND, DRAWS_GROUP_MARKS,
+    DRAWS_GROUP_BUBBLES,
+    DRAWS_GROUPS
+};
+
 /* Deal `count` numbers into an order, from the scenario's seed alone: the same
  * for every study. */
 void draws_deal(uint64_t seed, size_t count, size_t order[]);
 
-/* What keys the streams of LANES studies side by side. */
+/* What keys the streams of LANES studies side by side. A group whose bit stands
+ * in `exchange` is drawn from the streams of the other seed. */
 struct draws_key {
-    uint64_t study[LANES];
+    uint64_t study[LANES], other[LANES];
+    uint32_t exchange; /* bits 1 << enum draws_group; 0: none */
 };
-struct draws_key draws_key(uint64_t seed, uint64_t first_study);
+struct draws_exchange {
+    uint64_t other_seed;
+    uint32_t groups;
+};
+struct draws_key draws_key(uint64_t seed, uint64_t first_study, struct draws_exchange exchange);
 
 /* `slots` standard normals of a purpose and place. */
 void draws_normals(const struct draws_key *key, enum streams_purpose purpose, struct streams_place place, size_t slots, double out[][LANES]);
@@ -62,7 +77,8 @@ void draws_normals(const struct draws_key *key, enum streams_purpose purpose, st
 /* A filling: its own slots, then its runs in order; spare runs continue the
  * stream only where they are made. */
 struct draws_filling {
-    struct streams_state stream[LANES];
+    struct streams_state stream[LANES], other[LANES];
+    uint32_t exchange;
     unsigned char drawn[LANES]; /* runs drawn */
     double once[DRAWS_FILLING][LANES];
     double run[NOTEBOOK_MAX_RUNS][DRAWS_RUN][LANES];

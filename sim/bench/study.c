@@ -177,7 +177,7 @@ void study_play(size_t block, const void *context, void *slot, void *scratch)
 {
     const struct study_job *const job = context;
     struct parts parts = parts_of(job, scratch);
-    struct playing now = {.job = job, .key = draws_key(job->seed, (uint64_t)block * LANES), .fractions = job->fractions};
+    struct playing now = {.job = job, .key = draws_key(job->seed, (uint64_t)block * LANES, job->exchange), .fractions = job->fractions};
     struct study_bench *const benches = slot;
     struct reduction_result *const results = (void *)(benches + job->fractions);
     memset(benches, 0, job->fractions * sizeof *benches);
@@ -188,7 +188,7 @@ void study_play(size_t block, const void *context, void *slot, void *scratch)
 void study_show(size_t block, const struct study_job *job, unsigned preparation, void *scratch, struct study_shown *out)
 {
     struct parts parts = parts_of(job, scratch);
-    const struct playing now = {.job = job, .key = draws_key(job->seed, (uint64_t)block * LANES), .where = {0, preparation}, .fractions = 1};
+    const struct playing now = {.job = job, .key = draws_key(job->seed, (uint64_t)block * LANES, job->exchange), .where = {0, preparation}, .fractions = 1};
     start(&now, &parts);
     parts.block->bench[0].trace = &out->trace;
     work(&now, parts.block);

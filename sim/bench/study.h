@@ -14,6 +14,7 @@ enum { STUDY_MAX_FRACTIONS = 2 };
 struct study_job {
     const struct design *design;
     uint64_t seed;
+    struct draws_exchange exchange; /* groups drawn from another seed; mostly none */
     bool measured; /* takes two fractions */
     size_t fractions;
     double fraction[STUDY_MAX_FRACTIONS];

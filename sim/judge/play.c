@@ -76,7 +76,7 @@ static void collect(struct play *p, const struct playing *now, const void *slot,
 
 static void choose(const struct play *p, struct playing *now)
 {
-    now->job = (struct study_job){.design = p->design, .seed = p->seed, .measured = p->measured, .fractions = p->fractions, .analysis = now->analysis};
+    now->job = (struct study_job){.design = p->design, .seed = p->seed, .exchange = p->exchange, .measured = p->measured, .fractions = p->fractions, .analysis = now->analysis};
     memcpy(now->job.fraction, p->fraction, sizeof p->fraction);
     for (size_t a = 0; a < p->analyses; a++) {
         if (!p->active[a]) continue;

@@ -27,6 +27,7 @@ struct play {
     const struct design *design;
     uint64_t seed;
     size_t first_block;      /* studies start at first_block * LANES */
+    struct draws_exchange exchange;
     bool measured;           /* see study.h */
     size_t fractions;
     double fraction[STUDY_MAX_FRACTIONS];

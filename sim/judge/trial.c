@@ -5,6 +5,7 @@
 #include <string.h>
 
 #include "sim/judge/bar.h"
+#include "sim/judge/sources.h"
 
 static void one_analysis(struct play *p, const struct analysis *how)
 {
@@ -145,28 +146,12 @@ void trial_free_estimates(struct estimates *e)
     *e = (struct estimates){0};
 }
 
-/* The plan with every spread zero but those of the pair. */
-static struct plan without_spreads(const struct plan *plan)
-{
-    struct plan p = *plan;
-    p.material.hydrolysis_u = p.material.interaction_u = 0.0;
-    p.cleavage.conversion_u = 0.0;
-    p.solutions.dry_content_u = p.solutions.balance_u_kg = p.solutions.delivery_tolerance_m3 = p.solutions.delivery_u_m3 = 0.0;
-    p.solutions.stock_tolerance_m3 = p.solutions.level_tolerance_m3 = 0.0;
-    p.habits.filling_u = p.habits.charge_u_m3 = p.habits.tilt_u_rad = p.habits.kinetic_u = p.habits.bubble_chance = 0.0;
-    p.tube.solution_offset_u = 0.0;
-    p.bath.fluctuation_K = p.bath.drift_u_K_s = p.bath.day_u_K = p.bath.gradient_u_K = 0.0;
-    p.thermometer.calibration_u_K = p.thermometer.reading_u_K = 0.0;
-    p.timer.hand_u_s = p.timer.meniscus_u_m = 0.0;
-    return p;
-}
-
 bool trial_too_narrow(const struct scenario *s, const struct plan *plan, bool *too_narrow)
 {
     const struct question *const q = scenario_question(s);
     *too_narrow = false;
     if (!q->has_within || (plan->material.eta_u == 0.0 && plan->material.a_u == 0.0)) return true;
-    const struct plan bare = without_spreads(plan);
+    const struct plan bare = sources_alone(plan, DRAWS_GROUP_PAIR);
     struct design design;
     struct play p;
     bool ok = design_make(&design, &bare, scenario_cost(s), q);

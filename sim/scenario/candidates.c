@@ -125,6 +125,8 @@ static void candidates_polymer(const struct scenario *s, const size_t option[PAR
     record_compile(grade, &out->grade);
     out->grade.name = grade->name;
     candidates_hydrolysis(s->sections[KEYS_POLYMER], grade, &out->material);
+    out->material.stated_eta_u = out->material.eta_u;
+    out->material.stated_a_u = out->material.a_u;
     if (s->question.against_is == AGAINST_SAME_CONSTANTS)
         out->material.eta_u = out->material.a_u = 0.0;
 }

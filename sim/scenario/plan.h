@@ -39,6 +39,7 @@ struct question {
 struct material {
     const char *name;
     double K_m3_kg, a, eta_u, a_u;
+    double stated_eta_u, stated_a_u; /* as written, also where the question leaves eta_u and a_u out */
     double valid_from_kg_mol, valid_to_kg_mol, fitted_at_K;
     enum polymer_average calibrated_by;
     double repeat_unit_kg_mol, ester_unit_kg_mol;

@@ -296,3 +296,22 @@ json_t *scenario_resolved_json(const struct scenario *s, size_t index)
     arena_free(a);
     return json;
 }
+
+bool scenario_quantity(const struct scenario *s, const char *section, const char *key, struct scenario_quantity *out)
+{
+    for (int id = 0; id < KEYS_SECTIONS; id++) {
+        const struct keys_section *keys = keys_section((enum keys_id)id);
+        if (!keys->path || strcmp(keys->path, section) != 0)
+            continue;
+        const size_t i = keys_find(keys, key);
+        if (i == keys_count(keys))
+            return false;
+        const struct keys_row *row = keys_row(keys, i);
+        if (row->kind != KEYS_QUANTITY || row->size != sizeof(double))
+            return false;
+        *out = (struct scenario_quantity){row->offset, row->unit, units_si(s->units, row->dimension, row->unit, 1.0),
+                                          row->min, row->max};
+        return true;
+    }
+    return false;
+}

@@ -67,4 +67,17 @@ const char *scenario_zero_source(const struct scenario *s, size_t i);
 char *scenario_resolved_yaml(const struct scenario *s, size_t index);
 json_t *scenario_resolved_json(const struct scenario *s, size_t index);
 
+/* A quantity among the keys, for what varies a plan: where its value stands in
+ * the section's struct (plan.h), its unit, and its range in that unit. */
+struct scenario_quantity {
+    size_t offset;
+    const char *unit;  /* "" for none, "%" for a share */
+    double si;         /* one unit in SI */
+    double min, max;
+};
+
+/* `section` as keys.h names it, such as "kit.baths" or "bench". False: no such
+ * quantity. */
+bool scenario_quantity(const struct scenario *s, const char *section, const char *key, struct scenario_quantity *out);
+
 #endif
