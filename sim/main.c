@@ -13,14 +13,15 @@
 #include "sim/report/kit_print.h"
 #include "sim/report/progress.h"
 #include "sim/report/report.h"
+#include "sim/report/sheet.h"
 #include "sim/report/times.h"
 
 enum { DONE = 0, FAILED = 1, WRONG = 2, NOT_RESOLVED = 3 };
 enum { MAX_CANDIDATES = 100000 };
 
-enum verb { PLAN, TRIAL, KIT, CHECK, VERBS };
-static const char *const verb_name[VERBS] = {"plan", "trial", "kit", "check"};
-static const char *const later_verb[] = {"budget", "margin", "sheet", "reduce"};
+enum verb { PLAN, TRIAL, SHEET, KIT, CHECK, VERBS };
+static const char *const verb_name[VERBS] = {"plan", "trial", "sheet", "kit", "check"};
+static const char *const later_verb[] = {"budget", "margin", "reduce"};
 static const char *const later_option[] = {"--with", "--pilot", "--digits", "--resume", "--self-test"};
 
 static const char help[] =
@@ -28,6 +29,7 @@ static const char help[] =
     "\n"
     "  vicinal plan  SCENARIO     weigh every plan, name the cheapest that resolves\n"
     "  vicinal trial SCENARIO     one plan in depth\n"
+    "  vicinal sheet SCENARIO     one plan as a bench sheet, with a notebook to fill in\n"
     "  vicinal kit   [SCENARIO]   everything that can be chosen, and every key\n"
     "  vicinal check SCENARIO     read and check only\n"
     "\n"
@@ -74,15 +76,13 @@ static bool among(const char *word, const char *const *list, size_t count)
 static bool whole(const char *option, const char *text, unsigned long long least, unsigned long long most, unsigned long long *out)
 {
     char *end = NULL;
-    char allowed[96];
     errno = 0;
     const unsigned long long value = text[0] >= '0' && text[0] <= '9' ? strtoull(text, &end, 10) : 0;
     if (end && *end == '\0' && errno == 0 && value >= least && value <= most) {
         *out = value;
         return true;
     }
-    snprintf(allowed, sizeof allowed, "a whole number from %llu to %llu is wanted", least, most);
-    fprintf(stderr, "vicinal: %s %s: %s\n", option, text, allowed);
+    fprintf(stderr, "vicinal: %s %s: a whole number from %llu to %llu is wanted\n", option, text, least, most);
     return false;
 }
 
@@ -133,7 +133,7 @@ static bool take_verb(struct usage *u, const char *word)
             return true;
         }
     if (among(word, later_verb, sizeof later_verb / sizeof *later_verb)) return wrong(word, "not in this version");
-    return wrong(word, "no such command; there are plan, trial, kit and check");
+    return wrong(word, "no such command; there are plan, trial, sheet, kit and check");
 }
 
 static bool consistent(const struct usage *u)
@@ -348,6 +348,8 @@ static int with_scenario(const struct usage *u, struct report_context *context)
         status = do_plan(u, context);
     else if (u->verb == TRIAL)
         status = do_trial(u, context);
+    else if (u->verb == SHEET)
+        status = closed(s, u->scenario) ? sheet_write(context, 0) : WRONG;
     else if (u->verb == CHECK)
         status = do_check(context);
     else
@@ -377,8 +379,7 @@ int main(int argc, char **argv)
     for (int i = 1; i < argc; i++) {
         const bool asks_help = strcmp(argv[i], "--help") == 0;
         if (asks_help || strcmp(argv[i], "--version") == 0) {
-            if (asks_help) fputs(help, stdout);
-            else puts("vicinal " VICINAL_VERSION);
+            fputs(asks_help ? help : "vicinal " VICINAL_VERSION "\n", stdout);
             return fflush(stdout) == 0 ? DONE : FAILED;
         }
     }

@@ -169,19 +169,25 @@ json_t *json_out_head(const struct report_context *context, const char *verb, co
     return object;
 }
 
+bool json_out_played(json_t *object, const struct report_context *context, const struct outcome *outcome, bool deep)
+{
+    if (outcome->studies > 0) {
+        const struct question *question = scenario_question(context->scenario);
+        json_object_set_new(object, "outcome", json_out_outcome(question, outcome, deep));
+        return true;
+    }
+    json_object_set_new(object, "why", json_string(outcome->why));
+    json_object_set_new(object, "status", json_string(outcome_status_text(outcome->status)));
+    return false;
+}
+
 json_t *json_out_trial(const struct report_context *context, const struct outcome *outcome,
                        const struct warnings *warnings)
 {
     json_t *object = json_out_head(context, "trial", warnings);
     if (!object)
         return NULL;
-    if (outcome->studies > 0) {
-        const struct question *question = scenario_question(context->scenario);
-        json_object_set_new(object, "outcome", json_out_outcome(question, outcome, true));
-    } else {
-        json_object_set_new(object, "why", json_string(outcome->why));
-        json_object_set_new(object, "status", json_string(outcome_status_text(outcome->status)));
-    }
+    json_out_played(object, context, outcome, true);
     return object;
 }
 

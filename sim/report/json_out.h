@@ -22,6 +22,10 @@ json_t *json_out_head(const struct report_context *context, const char *verb, co
  * that `resolvable` is there, with null where there is none. */
 json_t *json_out_outcome(const struct question *question, const struct outcome *outcome, bool deep);
 
+/* Add the plan's `outcome`, or, of a plan that was not played (false then),
+ * `why` and `status`. */
+bool json_out_played(json_t *object, const struct report_context *context, const struct outcome *outcome, bool deep);
+
 json_t *json_out_trial(const struct report_context *context, const struct outcome *outcome,
                        const struct warnings *warnings);
 json_t *json_out_check(const struct report_context *context, double seconds, const struct warnings *warnings);

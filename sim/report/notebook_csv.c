@@ -27,18 +27,29 @@ static void comment(FILE *to, const char *label, const char *text)
     fputc('\n', to);
 }
 
+static void count(FILE *to, size_t n)
+{
+    if (n > 0)
+        fprintf(to, "%zu", n);
+    fputc(',', to);
+}
+
 static void line(FILE *to, const struct notebook_csv *n, const struct notebook_row *row)
 {
     if (n->preparations)
-        fprintf(to, "%zu,", row->preparation);
-    const unsigned long minutes = (unsigned long)floor(say_minutes(row->started_s));
-    fprintf(to, "%zu,%lu:%02lu,%s,", row->day, minutes / 60, minutes % 60, row->solution);
-    if (row->level > 0)
-        fprintf(to, "%zu", row->level);
-    fputc(',', to);
+        count(to, row->preparation);
+    count(to, row->day);
+    if (isfinite(row->started_s)) {
+        const unsigned long minutes = (unsigned long)floor(say_minutes(row->started_s));
+        fprintf(to, "%lu:%02lu", minutes / 60, minutes % 60);
+    }
+    fprintf(to, ",%s,", row->solution);
+    count(to, row->level);
     if (isfinite(row->concentration_kg_m3))
         fprintf(to, "%.10g", say_g_dL(row->concentration_kg_m3));
-    fprintf(to, ",%zu,%zu,", row->filling, row->run);
+    fputc(',', to);
+    count(to, row->filling);
+    count(to, row->run);
     if (isfinite(row->time_s))
         fprintf(to, "%.*f", decimals(n->timer_resolution_s), row->time_s);
     fputc(',', to);
@@ -49,9 +60,11 @@ static void line(FILE *to, const struct notebook_csv *n, const struct notebook_r
 
 void notebook_csv_print(FILE *to, const struct notebook_csv *notebook)
 {
+    static const char *const invented[] = {"Invented times: a simulated study, nothing here was measured.", NULL};
     comment(to, "", notebook->title);
     comment(to, "Plan: ", notebook->plan);
-    comment(to, "", "Invented times: a simulated study, nothing here was measured.");
+    for (const char *const *remark = notebook->remarks ? notebook->remarks : invented; *remark; remark++)
+        comment(to, "", *remark);
     if (notebook->preparations)
         fputs("preparation,", to);
     fputs("day,started,solution,level,concentration [g/dL],filling,run,time [s],temperature [degC],note\n", to);

@@ -1,16 +1,16 @@
-/* The synthetic notebook of one simulated study as a file. */
+/* A notebook as a file: of one simulated study, or blank for the bench. */
 #ifndef VICINAL_REPORT_NOTEBOOK_CSV_H
 #define VICINAL_REPORT_NOTEBOOK_CSV_H
 
 #include "sim/base/files.h"
 
 /* One run at the bench. Fillings, levels, runs and days count from 1; level 0
- * and concentration NaN for water. */
+ * and concentration NaN for water. What is 0 or NaN is left empty. */
 struct notebook_row {
     size_t preparation; /* from 1 */
     size_t day;
     double started_s;     /* the day's clock when the run begins */
-    const char *solution; /* "water", "blank", "intact", "cleaved" */
+    const char *solution; /* "water", "blank", "intact", "cleaved", "intact-stock", "cleaved-stock" */
     size_t level;
     double concentration_kg_m3; /* nominal; NaN: left empty */
     size_t filling, run;
@@ -24,6 +24,7 @@ struct notebook_csv {
     const struct notebook_row *rows;
     size_t count;
     bool preparations; /* there are several: a column of their own comes first */
+    const char *const *remarks; /* comment lines, NULL behind the last; NULL: that the times are invented */
 };
 
 /* Comment lines, a heading with units, a line per run. Times and temperatures

@@ -1,7 +1,5 @@
 #include "sim/report/report.h"
 
-#include <stdlib.h>
-#include <string.h>
 #include <time.h>
 
 #include "sim/report/candidates_csv.h"
@@ -14,7 +12,7 @@
 #include "sim/report/figure_tops.h"
 #include "sim/report/json_out_plan.h"
 #include "sim/report/json_out_print.h"
-#include "sim/report/run_log.h"
+#include "sim/report/report_files.h"
 #include "sim/report/terminal_plan.h"
 #include "sim/report/terminal_trial.h"
 #include "sim/report/warnings.h"
@@ -26,67 +24,14 @@ double report_clock(void)
     return (double)now.tv_sec + 1e-9 * (double)now.tv_nsec;
 }
 
-static bool without_memory(struct files_failure *failure)
-{
-    snprintf(failure->text, sizeof failure->text, "out of memory");
-    return false;
-}
-
-static int failed(const struct report_context *context, const struct files_failure *failure)
-{
-    fprintf(context->err, "vicinal: %s\n", *failure->text ? failure->text : "out of memory");
-    return 1;
-}
-
-/* The scenario with all its lists, or cut to one plan. */
-static bool save_scenario(const struct report_context *context, const char *name, size_t index,
-                          struct files_failure *failure)
-{
-    char *yaml = scenario_resolved_yaml(context->scenario, index);
-    char *path = yaml ? files_path(context->folder, name) : NULL;
-    const bool good = path ? files_write(path, yaml, strlen(yaml), failure) : without_memory(failure);
-    free(path);
-    free(yaml);
-    return good;
-}
-
-static bool save_json(const struct report_context *context, const char *name, json_t *object,
-                      struct files_failure *failure)
-{
-    struct files_text text;
-    if (!object || !files_text_open(&text))
-        return without_memory(failure);
-    json_out_print(text.stream, object);
-    return files_text_save(&text, context->folder, name, failure);
-}
-
 static bool save_candidates(const struct report_context *context, const struct search_result *search,
                             struct files_failure *failure)
 {
     struct files_text text;
     if (!files_text_open(&text))
-        return without_memory(failure);
+        return report_files_memory(failure);
     candidates_csv_print(text.stream, context->scenario, search);
     return files_text_save(&text, context->folder, "candidates.csv", failure);
-}
-
-static bool save_log(const struct report_context *context, struct files_failure *failure)
-{
-    struct files_text text;
-    if (!files_text_open(&text))
-        return without_memory(failure);
-    run_log_print(text.stream, context);
-    return files_text_save(&text, context->folder, "run.log", failure);
-}
-
-/* What came of the figures: without gnuplot their numbers are there, and a
- * figure that failed is no reason to throw the run away; one line says so. */
-static void tell_drawn(const struct report_context *context, const struct figures_pen *pen)
-{
-    if (pen->drawn == GNUPLOT_MISSING)
-        fprintf(context->err, "vicinal: no gnuplot, so no figures; their numbers are in %s\n", context->folder);
-    else if (pen->drawn == GNUPLOT_FAILED)
-        fprintf(context->err, "vicinal: %s\n", pen->failure.text);
 }
 
 static bool draw_plan(const struct report_context *context, const struct report_planned *planned,
@@ -101,7 +46,7 @@ static bool draw_plan(const struct report_context *context, const struct report_
     if (good && planned->map)
         good = figure_map(&pen, q, planned->map);
     if (good)
-        tell_drawn(context, &pen);
+        report_files_drawn(context, &pen);
     else
         *failure = pen.failure;
     return good;
@@ -125,7 +70,7 @@ static bool draw_trial(const struct report_context *context, const struct report
     if (good && tried->tops)
         good = figure_tops(&pen, &plan, tried->tops);
     if (good)
-        tell_drawn(context, &pen);
+        report_files_drawn(context, &pen);
     else
         *failure = pen.failure;
     return good;
@@ -147,39 +92,30 @@ static struct warnings *plan_warnings(const struct report_context *context, cons
     return w;
 }
 
-/* The answer on stdout; false when it could not be written. */
-static bool flushed(const struct report_context *context, struct files_failure *failure)
-{
-    if (fflush(context->out) == 0 && !ferror(context->out))
-        return true;
-    snprintf(failure->text, sizeof failure->text, "the answer could not be written");
-    return false;
-}
-
 int report_plan(const struct report_context *context, const struct report_planned *planned)
 {
     const struct search_result *r = planned->search;
     struct files_failure failure = {""};
     struct warnings *warnings = plan_warnings(context, planned);
     json_t *object = warnings ? json_out_plan(context, r, warnings) : NULL;
-    bool good = object ? files_folder(context->folder, &failure) : without_memory(&failure);
-    good = good && save_scenario(context, "scenario.resolved.yaml", SIZE_MAX, &failure) &&
+    bool good = object ? files_folder(context->folder, &failure) : report_files_memory(&failure);
+    good = good && report_files_scenario(context, "scenario.resolved.yaml", SIZE_MAX, &failure) &&
            save_candidates(context, r, &failure);
     if (good && r->recommended != SEARCH_NONE)
-        good = save_scenario(context, "recommended.yaml", (size_t)r->recommended, &failure);
-    good = good && save_json(context, "plan.json", object, &failure) && draw_plan(context, planned, &failure) &&
-           save_log(context, &failure);
+        good = report_files_scenario(context, "recommended.yaml", (size_t)r->recommended, &failure);
+    good = good && report_files_json(context, "plan.json", object, &failure) && draw_plan(context, planned, &failure) &&
+           report_files_log(context, &failure);
     if (good) {
         const struct page page = page_on(context->out);
         if (context->json)
             json_out_print(context->out, object);
         else
             terminal_plan(&page, context, planned, warnings);
-        good = flushed(context, &failure);
+        good = report_files_flushed(context, &failure);
     }
     json_decref(object);
     warnings_free(warnings);
-    return good ? 0 : failed(context, &failure);
+    return good ? 0 : report_files_failed(context, &failure);
 }
 
 int report_trial(const struct report_context *context, const struct report_tried *tried)
@@ -189,21 +125,21 @@ int report_trial(const struct report_context *context, const struct report_tried
     scenario_plan(context->scenario, tried->index, &plan);
     struct warnings *warnings = warnings_collect(context->scenario, &plan, tried->outcome, tried->within_too_narrow);
     json_t *object = warnings ? json_out_trial(context, tried->outcome, warnings) : NULL;
-    bool good = object ? files_folder(context->folder, &failure) : without_memory(&failure);
-    good = good && save_scenario(context, "scenario.resolved.yaml", SIZE_MAX, &failure) &&
-           save_json(context, "trial.json", object, &failure) && draw_trial(context, tried, &failure) &&
-           save_log(context, &failure);
+    bool good = object ? files_folder(context->folder, &failure) : report_files_memory(&failure);
+    good = good && report_files_scenario(context, "scenario.resolved.yaml", SIZE_MAX, &failure) &&
+           report_files_json(context, "trial.json", object, &failure) && draw_trial(context, tried, &failure) &&
+           report_files_log(context, &failure);
     if (good) {
         const struct page page = page_on(context->out);
         if (context->json)
             json_out_print(context->out, object);
         else
             terminal_trial(&page, context, tried, warnings);
-        good = flushed(context, &failure);
+        good = report_files_flushed(context, &failure);
     }
     json_decref(object);
     warnings_free(warnings);
-    return good ? 0 : failed(context, &failure);
+    return good ? 0 : report_files_failed(context, &failure);
 }
 
 int report_check(const struct report_context *context, double seconds)
@@ -215,16 +151,16 @@ int report_check(const struct report_context *context, double seconds)
         scenario_plan(context->scenario, 0, &plan);
     struct warnings *warnings = warnings_collect(context->scenario, one ? &plan : NULL, NULL, false);
     json_t *object = warnings ? json_out_check(context, seconds, warnings) : NULL;
-    bool good = object ? true : without_memory(&failure);
+    bool good = object ? true : report_files_memory(&failure);
     if (good) {
         const struct page page = page_on(context->out);
         if (context->json)
             json_out_print(context->out, object);
         else
             terminal_check(&page, context, seconds, warnings);
-        good = flushed(context, &failure);
+        good = report_files_flushed(context, &failure);
     }
     json_decref(object);
     warnings_free(warnings);
-    return good ? 0 : failed(context, &failure);
+    return good ? 0 : report_files_failed(context, &failure);
 }

@@ -7,6 +7,8 @@
 #include <stddef.h>
 #include <stdio.h>
 
+#include "sim/judge/budget.h"
+#include "sim/judge/margin.h"
 #include "sim/judge/search.h"
 #include "sim/judge/show.h"
 #include "sim/judge/survey.h"
@@ -35,6 +37,8 @@ struct report_planned {
     const struct survey_map *map; /* of that plan; NULL: none */
     const struct worse *worse;    /* where more work makes it worse */
     size_t worse_count;
+    const struct budget *budget;   /* of that plan; NULL: none */
+    const struct margins *margins; /* of that plan; NULL: none */
 };
 
 /* One plan in depth; of an impossible one all that was played is NULL, and

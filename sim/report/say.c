@@ -146,6 +146,33 @@ struct say say_by_error(double x, double se)
     return s;
 }
 
+struct say say_clock(double s)
+{
+    struct say out;
+    const unsigned long minutes = (unsigned long)floor(say_minutes(s) + 1e-9);
+    snprintf(out.text, sizeof out.text, "%lu:%02lu", minutes / 60, minutes % 60);
+    return out;
+}
+
+struct say say_while(double s)
+{
+    struct say out;
+    if (s >= 3600.0)
+        snprintf(out.text, sizeof out.text, "%.20s h", say_short(say_hours(s), 4).text);
+    else if (s > 90.0)
+        snprintf(out.text, sizeof out.text, "%.20s min", say_short(say_minutes(s), 3).text);
+    else
+        snprintf(out.text, sizeof out.text, "%.20s s", say_short(s, 3).text);
+    return out;
+}
+
+struct say say_volume(double m3)
+{
+    struct say out;
+    snprintf(out.text, sizeof out.text, "%.2f mL", say_mL(m3));
+    return out;
+}
+
 struct say say_plural(size_t n, const char *one)
 {
     struct say s;

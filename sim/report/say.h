@@ -49,6 +49,15 @@ struct say say_short(double x, int digits);
  * four significant digits where there is none. */
 struct say say_by_error(double x, double se);
 
+/* A clock or a while as hours:minutes, the begun minute not counted: "3:05". */
+struct say say_clock(double s);
+
+/* How long something takes: "1.5 h", "8 min", "60 s". */
+struct say say_while(double s);
+
+/* A volume to be measured out, in mL to 0.01: "4.00 mL". */
+struct say say_volume(double m3);
+
 /* "1 day", "2 days". */
 struct say say_plural(size_t n, const char *one);
 

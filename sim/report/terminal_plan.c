@@ -5,6 +5,7 @@
 #include <string.h>
 
 #include "sim/report/say.h"
+#include "sim/report/terminal_budget.h"
 #include "sim/report/terminal_choices.h"
 
 static struct terminal_subject subject_of(const struct scenario *s, long index, struct plan *plan,
@@ -145,6 +146,7 @@ void terminal_plan(const struct page *page, const struct report_context *context
     else
         missed(page, context, r);
     terminal_choices(page, context->scenario, r);
+    terminal_budget_why(page, planned->budget, planned->margins, scenario_cost(context->scenario)->currency);
     terminal_warnings(page, warnings);
     counted(page, context, r);
     if (r->recommended != SEARCH_NONE)

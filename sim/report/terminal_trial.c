@@ -5,7 +5,7 @@
 
 #include "sim/report/say.h"
 
-static void verdict(const struct page *page, const struct terminal_subject *subject)
+void terminal_trial_verdict(const struct page *page, const struct terminal_subject *subject)
 {
     const struct outcome *o = subject->outcome;
     char *question = terminal_question(scenario_question(subject->scenario));
@@ -120,7 +120,7 @@ void terminal_trial(const struct page *page, const struct report_context *contex
     const struct terminal_subject subject = {.scenario = s, .plan = &plan, .outcome = o, .index = tried->index};
     if (*scenario_title(s))
         page_say(page, PAGE_PLAIN, "%s", scenario_title(s));
-    verdict(page, &subject);
+    terminal_trial_verdict(page, &subject);
     if (o->studies > 0) {
         terminal_figures(page, &subject);
         page_blank(page);

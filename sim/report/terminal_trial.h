@@ -9,4 +9,7 @@
 void terminal_trial(const struct page *page, const struct report_context *context, const struct report_tried *tried,
                     const struct warnings *warnings);
 
+/* Whether one plan resolves what is asked, as one sentence. */
+void terminal_trial_verdict(const struct page *page, const struct terminal_subject *subject);
+
 #endif

@@ -44,7 +44,9 @@ static bool write_one(const struct report_context *context, const struct plan *p
         char words[200];
         snprintf(words, sizeof words, "%s in %s, %s, %s, %s; simulated study %zu", plan->grade.name, plan->tube.name, plan->bath.name,
                  plan->thermometer.name, plan->timer.name, study + 1);
-        const struct notebook_csv csv = {scenario_title(context->scenario), words, plan->timer.resolution_s, plan->thermometer.resolution_K, rows, notebook.runs, plan->preparations > 1};
+        const struct notebook_csv csv = {.title = scenario_title(context->scenario), .plan = words, .timer_resolution_s = plan->timer.resolution_s,
+                                         .thermometer_resolution_K = plan->thermometer.resolution_K, .rows = rows, .count = notebook.runs,
+                                         .preparations = plan->preparations > 1};
         good = notebook_csv_write(path, &csv, failure);
     }
     free(rows);
