@@ -184,10 +184,10 @@ LANES_WIDE static void run_temperatures(struct bench *b, const struct bench_fill
     }
     FOR_LANES(l)
     {
-        const double stay = 1.0 - go[l]; /* one of the two is zero */
-        b->bath_K[l] = go[l] * out[BATH_X_NEXT][l] + stay * b->bath_K[l];
-        b->liquid_K[l] = go[l] * out[BATH_L_NEXT][l] + stay * b->liquid_K[l];
-        b->lag_K[l] *= go[l] * lag_left + stay;
+        /* a lane that stays has no draws for this run: nothing of it may be taken */
+        b->bath_K[l] = go[l] != 0.0 ? out[BATH_X_NEXT][l] : b->bath_K[l];
+        b->liquid_K[l] = go[l] != 0.0 ? out[BATH_L_NEXT][l] : b->liquid_K[l];
+        b->lag_K[l] *= go[l] != 0.0 ? lag_left : 1.0;
         b->clock_s[l] += go[l] * step_s;
     }
     const double resolution = p->thermometer.resolution_K; /* on a Celsius scale */

@@ -16,9 +16,9 @@ bool cost_too_dear(const struct design *d, const struct cost_rules *rules, struc
     if (days > rules->at_most_days)
         snprintf(why, size, "takes %.0f days, over the %.0f allowed", days, rules->at_most_days);
     else if (hours > rules->at_most_hours)
-        snprintf(why, size, "takes %.1f h, over the %.1f h allowed", hours, rules->at_most_hours);
+        snprintf(why, size, "takes %.2f h, over the %.2f h allowed", hours, rules->at_most_hours);
     else if (grams > most_grams)
-        snprintf(why, size, "takes %.2f g of polymer, over the %.2f g allowed", grams, most_grams);
+        snprintf(why, size, "takes %.3f g of polymer, over the %.3f g allowed", grams, most_grams);
     else if (cost.money > rules->at_most_money)
         snprintf(why, size, "costs %.0f %s, over the %.0f allowed", cost.money, rules->currency, rules->at_most_money);
     else

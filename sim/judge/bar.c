@@ -26,16 +26,13 @@ static double turned(const struct question *q, double delta)
     return q->expect > q->against ? delta : -delta;
 }
 
-static double answered_sd(const double *x, size_t n)
+/* Density of rising values at a point; those without an answer lie at minus
+ * infinity. */
+static double density_at(const double *sorted, size_t n, double at)
 {
-    double *const kept = malloc(n * sizeof *kept);
-    size_t count = 0;
-    if (!kept) return 0.0;
-    for (size_t i = 0; i < n; i++)
-        if (isfinite(x[i])) kept[count++] = x[i];
-    const double sd = count > 1 ? moments_of(kept, count).sd : 0.0;
-    free(kept);
-    return sd;
+    size_t none = 0;
+    while (none < n && isinf(sorted[none])) none++;
+    return n - none > 1 ? moments_density(sorted, n, moments_scale(sorted + none, n - none), at) : 0.0;
 }
 
 bool bar_power_of(const struct question *q, const double *expect, const double *against, size_t n, struct bar_power *out)
@@ -56,8 +53,9 @@ bool bar_power_of(const struct question *q, const double *expect, const double *
         both += other[i] > critical && turned(q, against[i]) > critical;
     }
     const double at = isfinite(critical) ? critical : 0.0;
-    const double here = moments_density(sorted, n, answered_sd(sorted, n), at);
-    const double there = moments_density(other, n, answered_sd(other, n), at);
+    const double here = density_at(sorted, n, at);
+    moments_sort(other, n);
+    const double there = density_at(other, n, at);
     *out = (struct bar_power){
         .critical = q->expect > q->against ? critical : -critical,
         .power = isfinite(critical) ? (double)beyond / count : 0.0,

@@ -57,9 +57,16 @@ struct interval moments_shortest(const double *sorted, size_t n, double p)
     return (struct interval){sorted[best], sorted[best + q]};
 }
 
-double moments_density(const double *x, size_t n, double sd, double at)
+double moments_scale(const double *sorted, size_t n)
 {
-    const double h = 2.34 * sd * pow((double)n, -0.2);
+    const double quartiles = (moments_quantile(sorted, n, 0.75) - moments_quantile(sorted, n, 0.25)) / 1.349;
+    const double sd = moments_of(sorted, n).sd;
+    return quartiles > 0.0 && quartiles < sd ? quartiles : sd;
+}
+
+double moments_density(const double *x, size_t n, double scale, double at)
+{
+    const double h = 2.34 * scale * pow((double)n, -0.2);
     if (!(h > 0.0)) return 0.0;
     double sum = 0.0;
     for (size_t i = 0; i < n; i++) {

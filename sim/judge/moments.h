@@ -28,9 +28,14 @@ double moments_quantile(const double *sorted, size_t n, double p);
 struct interval moments_symmetric(const double *sorted, size_t n, double p);
 struct interval moments_shortest(const double *sorted, size_t n, double p);
 
-/* Density at `at`, by Epanechnikov's kernel 2.34 sd n^(-1/5) wide (Silverman,
- * Density Estimation (1986), 3.4.2, for a normal shape). */
-double moments_density(const double *x, size_t n, double sd, double at);
+/* How wide n >= 2 rising values spread: the lesser of their standard deviation
+ * and their interquartile range over 1.349, so that no wild value counts
+ * (Silverman, Density Estimation (1986), 3.4.2). */
+double moments_scale(const double *sorted, size_t n);
+
+/* Density at `at`, by Epanechnikov's kernel 2.34 scale n^(-1/5) wide (ibid.,
+ * for a normal shape). */
+double moments_density(const double *x, size_t n, double scale, double at);
 
 /* Numerical tolerance of a standard uncertainty given to `digits` significant
  * digits: half a unit of the last one. Source: JCGM 101:2008, 7.9.2. */

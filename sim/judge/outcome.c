@@ -117,9 +117,9 @@ static struct interval shortest_se(const double *x, size_t n)
     return se;
 }
 
-static double quantile_se(const double *sorted, size_t n, double sd, double p, double at)
+static double quantile_se(const double *sorted, size_t n, double scale, double p, double at)
 {
-    const double density = moments_density(sorted, n, sd, at);
+    const double density = moments_density(sorted, n, scale, at);
     return density > 0.0 ? sqrt(p * (1.0 - p) / (double)n) / density : 0.0;
 }
 
@@ -141,7 +141,8 @@ static bool describe(const double *x, size_t n, struct outcome *out)
     out->at.interval = moments_symmetric(sorted, n, coverage);
     out->at.shortest = moments_shortest(sorted, n, coverage);
     const double tail = 0.5 * (1.0 - coverage);
-    out->se.interval = (struct interval){quantile_se(sorted, n, m.sd, tail, out->at.interval.low), quantile_se(sorted, n, m.sd, tail, out->at.interval.high)};
+    const double scale = moments_scale(sorted, n);
+    out->se.interval = (struct interval){quantile_se(sorted, n, scale, tail, out->at.interval.low), quantile_se(sorted, n, scale, tail, out->at.interval.high)};
     out->se.shortest = shortest_se(x, n);
     free(sorted);
     return true;
@@ -157,14 +158,15 @@ static double share_se(double p, size_t n)
 
 /* Share of the estimates under `against` that a plain comparison with
  * `against` would call different: beyond z of their own standard deviations.
- * Its standard error allows for that deviation being estimated too. */
-static void plain_false_alarm(const struct question *q, const double *x, size_t n, size_t all, struct outcome *out)
+ * Its standard error allows for that deviation being estimated too. Sorts x. */
+static void plain_false_alarm(const struct question *q, double *x, size_t n, size_t all, struct outcome *out)
 {
     if (n < 2) return;
+    moments_sort(x, n);
     const struct moments m = moments_of(x, n);
     const double z = gsl_cdf_ugaussian_Pinv(bar_level(q)), sign = q->expect > q->against ? 1.0 : -1.0;
     const double edge = bar_null(q) + sign * z * m.sd, count = (double)all;
-    const double pull = m.sd > 0.0 ? moments_density(x, n, m.sd, edge) * z / (2.0 * m.sd) : 0.0;
+    const double pull = m.sd > 0.0 ? moments_density(x, n, moments_scale(x, n), edge) * z / (2.0 * m.sd) : 0.0;
     double sum = 0.0, sum2 = 0.0;
     for (size_t i = 0; i < n; i++) {
         const double d = x[i] - m.mean, influence = (sign * (x[i] - edge) > 0.0 ? 1.0 : 0.0) - pull * (d * d - m.sd * m.sd);
@@ -218,7 +220,10 @@ static void lay_costs(const struct scenario *s, const struct plan *plan, const s
     out->at.hours_s = cost.hours_s;
     out->at.money = cost.money;
     out->se.money = out->se.hours_s / 3600.0 * rules->hour;
-    if (cost_too_dear(play->design, rules, cost, out->why, sizeof out->why)) out->status = STATUS_TOO_DEAR;
+    /* before the cap only what is too dear beyond its own scatter */
+    const double scatter = play->n < scenario_studies(s) ? BAR_BAND : 0.0;
+    const struct cost least = {cost.hours_s - scatter * out->se.hours_s, cost.money - scatter * out->se.money};
+    if (cost_too_dear(play->design, rules, least, out->why, sizeof out->why)) out->status = STATUS_TOO_DEAR;
 }
 
 bool outcome_of(const struct scenario *s, const struct plan *plan, const struct play *play, size_t a, struct outcome *out)

@@ -137,7 +137,7 @@ static bool recommend(struct search *x, size_t *list)
             return true;
         }
         x->set_aside[best] = true;
-        x->r->candidates[best].outcome.status = STATUS_UNDECIDED;
+        x->r->candidates[best].outcome.status = x->r->fresh.status == STATUS_TOO_DEAR ? STATUS_TOO_DEAR : STATUS_UNDECIDED;
     }
 }
 
@@ -180,6 +180,9 @@ static bool nearest_miss(struct search *x, size_t *list)
     long best = SEARCH_NONE;
     if (n == 0) return true;
     if (!x->options.exhaustive && !take_to_cap(x, list, n)) return false;
+    /* what passed but not on fresh studies stays set aside */
+    for (size_t i = 0; i < n; i++)
+        if (x->set_aside[list[i]] && outcome_at(x, list[i])->status == STATUS_RESOLVES) x->r->candidates[list[i]].outcome.status = STATUS_UNDECIDED;
     for (size_t i = 0; i < n; i++) {
         const struct outcome *const o = outcome_at(x, list[i]);
         const struct outcome *const b = best == SEARCH_NONE ? NULL : outcome_at(x, (size_t)best);
@@ -190,7 +193,9 @@ static bool nearest_miss(struct search *x, size_t *list)
     struct plan plan;
     scenario_plan(x->s, (size_t)best, &plan);
     x->r->nearest_miss = best;
-    return trial_run(x->s, &plan, (struct trial_options){.deep = true}, &x->r->nearest, NULL) && with_known_constants(x, &plan);
+    if (!trial_run(x->s, &plan, (struct trial_options){.deep = true}, &x->r->nearest, NULL)) return false;
+    if (x->r->nearest.status == STATUS_RESOLVES) x->r->nearest.status = STATUS_UNDECIDED;
+    return with_known_constants(x, &plan);
 }
 
 /* What the recommended plan can just tell apart, on its fresh studies. */

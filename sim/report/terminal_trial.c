@@ -132,5 +132,6 @@ void terminal_trial(const struct page *page, const struct report_context *contex
     }
     terminal_warnings(page, warnings);
     page_blank(page);
-    page_say(page, PAGE_PLAIN, "The numbers are in %s/trial.json, the figures beside it.", context->folder);
+    page_say(page, PAGE_PLAIN, "The numbers are in %s/trial.json%s.", context->folder,
+             o->studies > 0 ? ", the figures beside it" : "");
 }

@@ -59,7 +59,8 @@ static void no_place_is_used_twice(void **state)
                         for (unsigned filling = 0; filling < 3; filling++) {
                             const struct draws_key key = draws_key(seed, block * LANES);
                             double out[2][LANES];
-                            draws_normals(&key, (enum streams_purpose)purpose, (struct streams_place){.solution = solution, .level = level, .filling = filling}, 2, out);
+                            const struct streams_place place = {.solution = solution, .level = level, .filling = filling};
+                            draws_normals(&key, (enum streams_purpose)purpose, place, 2, out);
                             FOR_LANES(l) if (n < MOST) list[n++] = (struct opening){out[0][l], out[1][l]};
                         }
     assert_int_equal(n, 2 * 2 * STREAMS_PURPOSES * 4 * 12 * 3 * LANES);

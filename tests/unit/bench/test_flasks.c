@@ -191,6 +191,8 @@ static void a_day_too_short(void **state)
     p.habits.working_day_s = 1.90 * 3600.0;
     p.habits.water_every_day = false; /* the second day needs no water */
     assert_string_equal(designed(&p, s).why, "");
+    p.habits.working_day_s = 1.8 * 3600.0; /* but the first day must hold more than its water */
+    assert_string_not_equal(designed(&p, s).why, "");
     scenario_free(s);
 }
 
