@@ -6,7 +6,7 @@
 #   make lint       the rules of the house (tests/lint/lint)
 #   make bench      what it costs to run
 #   make bare       demo and check in a fresh Debian 12 (as root)
-#   make install    PREFIX=/usr/local DESTDIR=
+#   make install    program, man page, completion and scenarios; PREFIX=/usr/local DESTDIR=
 #   make clean
 #
 #   VARIANT=release|debug|san   each in a folder of its own; san: address and undefined-behaviour sanitizers
@@ -63,7 +63,7 @@ PACKAGE_LIBS   = $(eval PACKAGE_LIBS := $(call checked,$(call packages,--libs)))
 CPPFLAGS = -I. -D_POSIX_C_SOURCE=200809L -DVICINAL_VERSION=\"$(VERSION)\" $(PACKAGE_CFLAGS)
 FLAGS    = -g -ffp-contract=off $(FLAGS_$(VARIANT)) $(OPENMP_$(OPENMP))
 COMPILE  = $(CC) -std=c11 $(FLAGS) $(WARNINGS) $(CPPFLAGS) -MMD -MP
-LIBS     = $(PACKAGE_LIBS) -ludunits2 -lm
+LIBS     = $(PACKAGE_LIBS) -ludunits2 -lcmark-gfm-extensions -lcmark-gfm -lm
 
 # Rewrites the target only when its text changes, so that what depends on it is made again just then.
 keep = @mkdir -p $(@D); printf '%s\n' '$(strip $(1))' | cmp -s - $@ || printf '%s\n' '$(strip $(1))' > $@
@@ -77,7 +77,7 @@ $(BUILD)/members: FORCE
 
 SOURCES   = $(sort $(wildcard models/*.c sim/*/*.c))
 PLOTS     = $(sort $(wildcard plots/*.gp))
-GENERATED = $(BUILD)/embedded/kit.o $(BUILD)/embedded/plots.o
+GENERATED = $(BUILD)/embedded/kit.o $(BUILD)/embedded/plots.o $(BUILD)/embedded/proposal.o
 OBJECTS   = $(SOURCES:%.c=$(BUILD)/obj/%.o)
 
 program: $(PROGRAM)
@@ -116,6 +116,12 @@ $(BUILD)/embedded/plots.c: $(PLOTS) $(BUILD)/members Makefile
 	   done; \
 	   echo "const struct plots_file vicinal_plots[] = {$$table{NULL, NULL, 0}};"; \
 	   echo "const size_t vicinal_plots_count = $$n;"; } > $@
+
+$(BUILD)/embedded/proposal.c: sim/report/proposal.css sim/report/proposal.js Makefile
+	@mkdir -p $(@D)
+	@{ echo '#include "sim/report/proposal_html.h"'; \
+	   echo 'const unsigned char vicinal_proposal_css[] = {'; $(call bytes,sim/report/proposal.css); \
+	   echo 'const unsigned char vicinal_proposal_js[] = {'; $(call bytes,sim/report/proposal.js); } > $@
 
 # ---- tests ----
 # tests/unit: every test_*.c (cmocka) and test_*.cpp is a program; what is not called test_ is linked to each of them.
@@ -176,6 +182,10 @@ bare:
 
 install: $(PROGRAM)
 	install -D -m 755 $(PROGRAM) $(DESTDIR)$(PREFIX)/bin/vicinal
+	install -D -m 644 sim/report/vicinal.1 $(DESTDIR)$(PREFIX)/share/man/man1/vicinal.1
+	install -D -m 644 sim/report/vicinal.bash $(DESTDIR)$(PREFIX)/share/bash-completion/completions/vicinal
+	install -d $(DESTDIR)$(PREFIX)/share/vicinal/scenarios
+	install -m 644 $(sort $(wildcard scenarios/*.yaml)) $(DESTDIR)$(PREFIX)/share/vicinal/scenarios
 
 clean:
 	rm -rf build

@@ -22,8 +22,9 @@ struct density {
 
 static double density_at(const struct density *d, double N)
 {
-    if (d->kind == CHAINS_SCHULZ_ZIMM) return exp((d->k - 1.0) * log(N / d->theta) - d->k * N / d->theta);
-    const double z = log(N / d->theta);
+    const double x = N / d->theta;
+    if (d->kind == CHAINS_SCHULZ_ZIMM) return exp((d->k - 1.0) * log(x) - d->k * (x - 1.0)); /* near 1 at its top */
+    const double z = log(x);
     return exp(-0.5 * z * z / d->variance) / N;
 }
 

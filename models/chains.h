@@ -36,7 +36,7 @@ struct chains_shape {
 
 /* The table: ln F over ln d in panels of a factor of two, each a polynomial of
  * Chebyshev's; below the first panel one over d itself. Within 1e-10 of F. */
-enum { CHAINS_TERMS = 14, CHAINS_PANELS = 28, CHAINS_FIRST = 96 };
+enum { CHAINS_TERMS = 18, CHAINS_PANELS = 28, CHAINS_FIRST = 96 };
 #define CHAINS_MOST_CUT 0.4
 
 struct chains {

@@ -3,8 +3,8 @@
 # Of each panel k: label_k, log_k (0 or 1), low_k, high_k.
 columns = 3
 lines = int((panels + columns - 1) / columns)
-top = 1 - 46.0 / height
-set multiplot layout lines, columns margins screen 0.105, screen 0.98, screen 62.0 / height, screen top spacing screen 0.045, screen 80.0 / height
+top = 1 - 62.0 / height
+set multiplot layout lines, columns margins screen 0.125, screen 0.98, screen 84.0 / height, screen top spacing screen 0.05, screen 92.0 / height
 set key off
 set yrange [lowest:104]
 set ytics 20

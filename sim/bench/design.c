@@ -23,6 +23,18 @@ double design_filling_s(const struct design *d, const struct notebook_filling *f
     return (filling->added ? h->add_and_mix_s : h->clean_and_fill_s) + h->equilibrate_s + (double)filling->runs * run_s;
 }
 
+/* Most-probable lengths take no time to work out; others come with the plan. */
+static bool lay_lengths(struct design *d)
+{
+    const struct material *const m = &d->plan->material;
+    const struct grade *const g = &d->plan->grade;
+    const double unit = polymer_unit_kg_mol(m->hydrolysis, m->repeat_unit_kg_mol, m->ester_unit_kg_mol);
+    if (g->distribution == CHAINS_MOST_PROBABLE)
+        return chains_make(&d->lengths, (struct chains_shape){g->distribution, g->dispersity, g->average, g->molar_mass_kg_mol / unit}, m->a);
+    d->lengths = *d->plan->chains;
+    return true;
+}
+
 static void lay_chains(struct design *d)
 {
     const struct material *const m = &d->plan->material;
@@ -31,8 +43,8 @@ static void lay_chains(struct design *d)
     const struct scission_roots roots = scission_roots(cut->neighbours, d->expect, chance);
     struct design_chains *const c = &d->chains;
     c->unit_kg_mol = polymer_unit_kg_mol(m->hydrolysis, m->repeat_unit_kg_mol, m->ester_unit_kg_mol);
-    c->Mv_kg_mol[INTACT] = c->unit_kg_mol * d->plan->chains->xv;
-    c->Mv_kg_mol[CLEAVED] = c->unit_kg_mol * scission_average(d->plan->chains, &roots);
+    c->Mv_kg_mol[INTACT] = c->unit_kg_mol * d->lengths.xv;
+    c->Mv_kg_mol[CLEAVED] = c->unit_kg_mol * scission_average(&d->lengths, &roots);
     for (size_t s = 0; s < SERIES; s++) c->intrinsic_m3_kg[s] = polymer_intrinsic_viscosity(m->K_m3_kg, m->a, c->Mv_kg_mol[s]);
 }
 
@@ -68,27 +80,32 @@ static void lay_series(struct design *d)
     }
 }
 
-static void lay_times(struct design *d)
+/* Times and steps of one liquid. */
+static void lay_time(struct design *d, struct design_liquid *q, struct bath_times times)
 {
     const struct plan *const p = d->plan;
     const struct habits *const h = &p->habits;
-    const struct bath_times times = {p->bath.correlation_time_s, h->lag_s};
-    d->idle = bath_idle(times, p->bath.fluctuation_K, h->clean_and_fill_s, h->equilibrate_s);
+    const double nu = nominal_viscosity(d, q);
+    q->nominal_s = tube_efflux(p->tube.constant_m2_s2, p->tube.ends, p->tube.kinetic, nu);
+    const double k = tube_kinetic(p->tube.ends, p->tube.kinetic, q->nominal_s);
+    if (!(k <= 0.1 * nu) && d->why[0] == '\0')
+        snprintf(d->why, sizeof d->why, "%s is too fast for this law: its kinetic-energy term is over a tenth of the viscosity", p->tube.name);
+    if (p->dilution == DILUTION_IN_TUBE && q->volume_m3 > 0.0)
+        q->addition = bath_addition(times, p->bath.fluctuation_K, h->add_and_mix_s, h->equilibrate_s, 1.0 - q->added_m3 / q->volume_m3);
+    q->step = bath_run(times, p->bath.fluctuation_K, q->nominal_s, h->reset_s, p->thermometer.reads);
+    q->lag_mean = h->lag_s / q->nominal_s * -expm1(-q->nominal_s / h->lag_s);
+    q->lag_left = exp(-(q->nominal_s + h->reset_s) / h->lag_s);
+}
+
+static void lay_times(struct design *d)
+{
+    const struct habits *const h = &d->plan->habits;
+    const struct bath_times times = {d->plan->bath.correlation_time_s, h->lag_s};
+    d->idle = bath_idle(times, d->plan->bath.fluctuation_K, h->clean_and_fill_s, h->equilibrate_s);
     d->lag_wait = exp(-h->equilibrate_s / h->lag_s);
     d->lag_mix = exp(-h->add_and_mix_s / h->lag_s);
-    for (size_t i = 0; i < d->liquids; i++) {
-        struct design_liquid *const q = &d->liquid[i];
-        const double nu = nominal_viscosity(d, q);
-        q->nominal_s = tube_efflux(p->tube.constant_m2_s2, p->tube.ends, p->tube.kinetic, nu);
-        const double k = tube_kinetic(p->tube.ends, p->tube.kinetic, q->nominal_s);
-        if (!(k <= 0.1 * nu) && d->why[0] == '\0')
-            snprintf(d->why, sizeof d->why, "%s is too fast for this law: its kinetic-energy term is over a tenth of the viscosity", p->tube.name);
-        if (p->dilution == DILUTION_IN_TUBE && i >= DESIGN_LEVELS)
-            q->addition = bath_addition(times, p->bath.fluctuation_K, h->add_and_mix_s, h->equilibrate_s, 1.0 - q->added_m3 / q->volume_m3);
-        q->step = bath_run(times, p->bath.fluctuation_K, q->nominal_s, h->reset_s, p->thermometer.reads);
-        q->lag_mean = h->lag_s / q->nominal_s * -expm1(-q->nominal_s / h->lag_s);
-        q->lag_left = exp(-(q->nominal_s + h->reset_s) / h->lag_s);
-    }
+    for (size_t i = 0; i < d->liquids; i++) lay_time(d, &d->liquid[i], times);
+    lay_time(d, &d->liquid[DESIGN_BLANK], times);
 }
 
 static void lay_assumed(struct design *d)
@@ -101,7 +118,7 @@ static void lay_assumed(struct design *d)
         .record = p->temperature_record, .set_K = T, .water = d->water, .water_m2_s = water_fit_kinematic(&d->water, T),
         .agreement = p->habits.agreement, .combine = p->habits.combine, .ends = p->tube.ends, .kinetic = p->tube.kinetic,
         .K_m3_kg = m->K_m3_kg, .a = m->a, .unit_kg_mol = d->chains.unit_kg_mol, .r = polymer_r(m->a),
-        .neighbours = p->cleavage.neighbours, .head_to_head_chance = 1.0, .sums = &p->chains->sums,
+        .neighbours = p->cleavage.neighbours, .head_to_head_chance = 1.0, .sums = &d->lengths.sums,
         .blank_reference = p->cleavage.blank_reference};
     if (p->cleavage.correct_conversion) a->head_to_head_chance = p->cleavage.conversion * m->hydrolysis * m->hydrolysis;
     for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) {
@@ -119,6 +136,7 @@ bool design_make(struct design *d, const struct plan *plan, const struct cost_ru
     d->expect = question->expect;
     d->repeats = (double)plan->preparations * (question->against_is == AGAINST_MEASURED ? 2.0 : 1.0);
     d->water = water_fit_make();
+    if (!lay_lengths(d)) return false;
     lay_chains(d);
     lay_series(d);
     flasks_choose(d);

@@ -12,10 +12,10 @@
 #include "sim/reduce/notebook.h"
 #include "sim/scenario/plan.h"
 
-/* A liquid that goes into the tube: water (number 0), the blank (1), then the
- * levels of the intact series, then those of the cleaved, each from dilute to
- * concentrated. */
-enum { DESIGN_WATER, DESIGN_BLANK, DESIGN_LEVELS, DESIGN_MAX_LIQUIDS = DESIGN_LEVELS + SERIES * PLAN_MAX_LEVELS };
+/* A liquid that goes into the tube: water (number 0), then the levels of the
+ * intact series, then those of the cleaved, each from dilute to concentrated;
+ * behind the room for them the blank. */
+enum { DESIGN_WATER, DESIGN_LEVELS, DESIGN_BLANK = DESIGN_LEVELS + SERIES * PLAN_MAX_LEVELS, DESIGN_MAX_LIQUIDS };
 struct design_liquid {
     size_t series, level;      /* of a polymer solution */
     double conc_kg_m3;         /* nominal; 0 for water and blank */
@@ -49,11 +49,12 @@ struct design {
     char why[160]; /* not empty: the plan is impossible, and what is missing */
 
     struct water_fit water;
+    struct chains lengths;       /* of the grade */
     struct design_chains chains;
     struct design_flasks flasks;
     struct assumed assumed;
 
-    size_t liquids;
+    size_t liquids; /* water and levels */
     struct design_liquid liquid[DESIGN_MAX_LIQUIDS];
     struct bath_step idle;
     double lag_wait; /* what is left of a deviation of the liquid after the wait */

@@ -46,7 +46,7 @@ static void intrinsic_of(const struct design *d, const struct truth_draws *draws
     const double X = reflected(cut->conversion + cut->conversion_u * draws->preparation[DRAWS_CONVERSION][lane]);
     const struct scission_roots roots = scission_roots(cut->neighbours, fraction, (struct scission_chance){X * h * h, cut->nonspecific});
     const double unit = polymer_unit_kg_mol(h, m->repeat_unit_kg_mol, m->ester_unit_kg_mol);
-    const double Mv[SERIES] = {d->chains.Mv_kg_mol[INTACT], unit * scission_average(d->plan->chains, &roots)};
+    const double Mv[SERIES] = {d->chains.Mv_kg_mol[INTACT], unit * scission_average(&d->lengths, &roots)};
     const double middle = sqrt(m->valid_from_kg_mol * m->valid_to_kg_mol);
     for (size_t s = 0; s < SERIES; s++) {
         double off = m->eta_u * draws->study[DRAWS_PAIR_MIDDLE][lane];

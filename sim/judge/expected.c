@@ -85,7 +85,7 @@ bool expected_make(const struct scenario *s, const struct design *design, double
     struct slot *const slots = calloc(EXPECTED_STUDIES / LANES, sizeof *slots);
     const bool ok = slots && spread((struct spread_range){0, EXPECTED_STUDIES / LANES}, add_block, &job, slots,
                                     (struct spread_size){sizeof *slots, sizes.study + sizes.started + sizes.run});
-    for (size_t i = 0; ok && i < DESIGN_MAX_LIQUIDS; i++) out->time[i] = time_of(slots, i, i < own.liquids ? own.liquid[i].nominal_s : 0.0);
+    for (size_t i = 0; ok && i < DESIGN_MAX_LIQUIDS; i++) out->time[i] = time_of(slots, i, own.liquid[i].nominal_s);
     free(slots);
     return ok;
 }

@@ -37,7 +37,7 @@ static void nothing(struct figures *f)
 static void lay_facts(const struct design *d, struct outcome *out)
 {
     out->water_efflux_s = d->liquid[DESIGN_WATER].nominal_s;
-    for (size_t i = 1; i < d->liquids; i++) {
+    for (size_t i = DESIGN_LEVELS; i < d->liquids; i++) {
         const struct design_liquid *const q = &d->liquid[i];
         out->levels[q->series] = q->level + 1;
         out->concentration_kg_m3[q->series][q->level] = q->conc_kg_m3;

@@ -13,25 +13,32 @@ static double ordinate(enum extrapolation e, double conc, double relative)
     }
 }
 
+/* The levels of a series, weighted. */
+struct levels {
+    size_t n;
+    const double *conc, *relative;
+    double weight[ASSUMED_MAX_LEVELS];
+};
+
 /* Weighted residual sum of squares of one line about its fit. */
-static double residuals(enum extrapolation e, size_t n, const double *conc, const double *relative, const double *weight, struct line line)
+static double residuals(enum extrapolation e, const struct levels *l, struct line line)
 {
     double sum = 0.0;
-    for (size_t i = 0; i < n; i++) {
-        const double r = ordinate(e, conc[i], relative[i]) - line.intercept - line.slope * conc[i];
-        sum += weight[i] * r * r;
+    for (size_t i = 0; i < l->n; i++) {
+        const double r = ordinate(e, l->conc[i], l->relative[i]) - line.intercept - line.slope * l->conc[i];
+        sum += l->weight[i] * r * r;
     }
     return sum;
 }
 
 /* Variance of an intercept over that of a residual of weight 1. */
-static double leverage(size_t n, const double *conc, const double *weight)
+static double leverage(const struct levels *l)
 {
     double sw = 0.0, swx = 0.0, swxx = 0.0;
-    for (size_t i = 0; i < n; i++) {
-        sw += weight[i];
-        swx += weight[i] * conc[i];
-        swxx += weight[i] * conc[i] * conc[i];
+    for (size_t i = 0; i < l->n; i++) {
+        sw += l->weight[i];
+        swx += l->weight[i] * l->conc[i];
+        swxx += l->weight[i] * l->conc[i] * l->conc[i];
     }
     return 1.0 / (sw - swx * swx / swxx);
 }
@@ -51,19 +58,19 @@ static double single_point_u(size_t n, const double *conc, const double *relativ
 
 double claim_intrinsic_u(const struct analysis *how, size_t n, const double *conc, const double *relative, double *freedom)
 {
-    double weight[ASSUMED_MAX_LEVELS];
+    struct levels l = {.n = n, .conc = conc, .relative = relative};
     struct line line[2] = {{0.0, 0.0}, {0.0, 0.0}};
     if (how->extrapolation == SINGLE_POINT) return single_point_u(n, conc, relative, freedom);
     const double intrinsic = reduction_extrapolate(how, n, conc, relative, line), count = (double)n;
-    for (size_t i = 0; i < n; i++) weight[i] = how->weighting == WEIGHT_C_SQUARED ? conc[i] * conc[i] : 1.0;
+    for (size_t i = 0; i < n; i++) l.weight[i] = how->weighting == WEIGHT_C_SQUARED ? conc[i] * conc[i] : 1.0;
     if (how->extrapolation == COMMON_INTERCEPT) {
-        const double sum = residuals(HUGGINS, n, conc, relative, weight, line[0]) + residuals(KRAEMER, n, conc, relative, weight, line[1]);
+        const double sum = residuals(HUGGINS, &l, line[0]) + residuals(KRAEMER, &l, line[1]);
         *freedom = 2.0 * count - 3.0;
-        return sqrt(sum / *freedom * leverage(n, conc, weight) / 2.0);
+        return sqrt(sum / *freedom * leverage(&l) / 2.0);
     }
     *freedom = count - 2.0;
     if (n < 3) return (double)NAN;
-    const double u = sqrt(residuals(how->extrapolation, n, conc, relative, weight, line[0]) / *freedom * leverage(n, conc, weight));
+    const double u = sqrt(residuals(how->extrapolation, &l, line[0]) / *freedom * leverage(&l));
     return how->extrapolation == MARTIN ? u * intrinsic : u;
 }
 

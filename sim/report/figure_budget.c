@@ -7,11 +7,11 @@
 static const double least_shown = 0.001;
 enum { ALWAYS_SHOWN = 3, FRAME_UNITS = 96, ROW_UNITS = 30 };
 
-/* Neither a share nor a scatter of its own: the source is not there. */
+/* Exchanging it changes nothing: the source is not there. (Its first-order share
+ * is then noise.) */
 static bool absent(const struct budget_group *g)
 {
-    const bool share = fabs(g->total) > 0.0 || fabs(g->first) > 0.0;
-    return !isfinite(g->total) || (!share && !(g->alone_sd > 0.0));
+    return !isfinite(g->total) || !(fabs(g->total) > 1e-12);
 }
 
 size_t figure_budget_sorted(const struct budget *budget, enum draws_group order[SOURCES])
@@ -51,13 +51,13 @@ static void rows(FILE *to, const struct budget *b, const enum draws_group *order
     }
 }
 
-/* Where the axis begins: at zero, or below what noise left below it. */
+/* Where the axis begins: at zero, or below what noise puts below it. */
 static double axis_left(const struct budget *b, const enum draws_group *order, size_t shown)
 {
     double left = 0.0;
     for (size_t i = 0; i < shown; i++) {
         const struct budget_group *g = &b->group[order[i]];
-        left = fmin(left, fmin(g->first, g->total));
+        left = fmin(left, fmin(g->first - g->first_se, g->total - g->total_se));
     }
     return floor(say_percent(left));
 }

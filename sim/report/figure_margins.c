@@ -6,7 +6,7 @@
 #include "sim/report/candidates_csv.h"
 #include "sim/report/say.h"
 
-enum { COLUMNS = 3, FRAME_UNITS = 46, ROW_UNITS = 172 };
+enum { COLUMNS = 3, FRAME_UNITS = 54, ROW_UNITS = 186 };
 /* Wider than this the axis is logarithmic. */
 static const double log_from = 4.0;
 
@@ -127,7 +127,8 @@ static void condition(struct drawing *d, const struct margins *all, size_t first
 static void frame(const struct drawing *d, const struct question *q)
 {
     const double bar = q->has_against ? q->power : q->confidence;
-    const double lowest = 20.0 * floor(say_percent(d->lowest) / 20.0);
+    /* what falls further than that leaves the panel */
+    const double lowest = 20.0 * floor(say_percent(fmax(d->lowest, bar - 0.4)) / 20.0);
     const size_t lines = (d->panels + COLUMNS - 1) / COLUMNS;
     gnuplot_text(d->variables, "figure_label", q->has_against ? "power / %" : "within / %");
     gnuplot_text(d->variables, "figure_title", q->has_against ? "power" : "studies within");

@@ -1,5 +1,7 @@
 #include "sim/report/figures.h"
 
+#include <string.h>
+
 bool figures_open(struct files_text *csv, struct files_text *variables)
 {
     if (!files_text_open(csv))
@@ -22,7 +24,17 @@ bool figures_draw(struct figures_pen *pen, const char *name, const char *script,
         const struct gnuplot_figure figure = {
             .folder = pen->folder, .name = name, .script = script, .variables = variables->bytes};
         pen->drawn = gnuplot_draw(&figure, &pen->failure);
+        if (pen->drawn == GNUPLOT_DRAWN && pen->count < FIGURES_MOST)
+            pen->name[pen->count++] = name;
     }
     files_text_free(variables);
     return written;
+}
+
+bool figures_drawn(const struct figures_pen *pen, const char *name)
+{
+    for (size_t i = 0; i < pen->count; i++)
+        if (strcmp(pen->name[i], name) == 0)
+            return true;
+    return false;
 }

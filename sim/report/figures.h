@@ -7,8 +7,11 @@
 
 /* Draws one after the other; after the first that finds no gnuplot only the
  * CSV files are written. */
+enum { FIGURES_MOST = 12 };
 struct figures_pen {
     const char *folder;
+    const char *name[FIGURES_MOST]; /* of those that were drawn */
+    size_t count;
     enum gnuplot_result drawn;    /* GNUPLOT_DRAWN to begin with; the worst so far */
     struct files_failure failure; /* of a CSV that could not be written, or of gnuplot */
 };
@@ -20,5 +23,8 @@ bool figures_open(struct files_text *csv, struct files_text *variables);
  * closed and freed. False: a file could not be written. */
 bool figures_draw(struct figures_pen *pen, const char *name, const char *script, struct files_text *csv,
                   struct files_text *variables);
+
+/* Whether the figure of this name was drawn. */
+bool figures_drawn(const struct figures_pen *pen, const char *name);
 
 #endif

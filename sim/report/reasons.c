@@ -72,7 +72,7 @@ double reasons_share(const struct budget *b, enum reasons_repeat repeat, char na
     double sum = 0.0;
     for (size_t i = 0; i < count; i++)
         if (about[order[i]].repeat == repeat) {
-            sum += b->group[order[i]].first;
+            sum += b->group[order[i]].total;
             worth += b->group[order[i]].total >= worth_a_word;
         }
     names[0] = '\0';
@@ -86,18 +86,18 @@ double reasons_temperature_share(const struct budget *b)
 {
     double sum = 0.0;
     for (int g = 0; g < SOURCES; g++)
-        if (about[g].temperature && isfinite(b->group[g].first))
-            sum += b->group[g].first;
+        if (about[g].temperature && isfinite(b->group[g].total))
+            sum += b->group[g].total;
     return sum > 0.0 ? sum : 0.0;
 }
 
 double reasons_floor_sd(const struct budget *b)
 {
-    char names[REASONS_NAMES];
-    double left = 0.0;
-    for (int repeat = REASONS_STUDY; repeat <= REASONS_PREPARATION; repeat++)
-        left += reasons_share(b, (enum reasons_repeat)repeat, names);
-    return b->outcome.at.sd * sqrt(fmin(left, 1.0));
+    double squares = 0.0;
+    for (int g = 0; g < SOURCES; g++)
+        if (about[g].repeat <= REASONS_PREPARATION && isfinite(b->group[g].alone_sd))
+            squares += b->group[g].alone_sd * b->group[g].alone_sd;
+    return fmin(sqrt(squares), b->outcome.at.sd);
 }
 
 /* A share of the variance: "24.2 %". */
@@ -140,7 +140,7 @@ static void floor_of(struct reasons *to, const struct budget *b)
         add(to, "Nearly all of the variance averages out over replicates.");
     if (*made)
         add(to, "What only further preparations average out: %s, %s of the variance.", made, share(preparation).text);
-    add(to, "With endless fillings and runs the standard deviation would fall from %s points to no less than %s.",
+    add(to, "With endless fillings and runs the standard deviation would fall from %s points to about %s, no further.",
         say_digits(say_percent(b->outcome.at.sd), 2).text, say_digits(say_percent(reasons_floor_sd(b)), 2).text);
 }
 
@@ -246,6 +246,10 @@ static void exchange(struct reasons *to, const struct margins *m, const char *cu
         return;
     if (!*e->replicates) {
         add(to, "On a bath twice as bad no number of replicates makes it resolve.");
+        return;
+    }
+    if (fabs(say_hours(e->hours_s)) < 0.05 && fabs(e->money) < 0.5) {
+        add(to, "On a bath twice as bad it still resolves as it is, with no further replicates.");
         return;
     }
     if (fabs(e->money) > 0.0)

@@ -17,15 +17,16 @@ struct reasons {
 enum reasons_repeat { REASONS_STUDY, REASONS_PREPARATION, REASONS_DAY, REASONS_FILLING, REASONS_RUN };
 enum reasons_repeat reasons_repeat_of(enum draws_group group);
 
-/* The first-order shares of the sources that this averages out, summed (never
- * below 0), and the names of those above 1 %, the greatest first. */
+/* The total shares of the sources that this averages out, summed (never below
+ * 0), and the names of those above 1 %, the greatest first. */
 enum { REASONS_NAMES = 320 };
 double reasons_share(const struct budget *budget, enum reasons_repeat repeat, char names[REASONS_NAMES]);
 
 /* The same over the sources that have to do with temperature. */
 double reasons_temperature_share(const struct budget *budget);
 
-/* What the standard deviation would fall to with endless fillings and runs. */
+/* About what the standard deviation would fall to with endless fillings and
+ * runs: what the sources that these do not average out cause alone. */
 double reasons_floor_sd(const struct budget *budget);
 
 /* Add the sentences of a budget (at most six) and of the margins (at most

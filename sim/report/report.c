@@ -3,15 +3,19 @@
 #include <time.h>
 
 #include "sim/report/candidates_csv.h"
+#include "sim/report/figure_budget.h"
+#include "sim/report/figure_claimed.h"
 #include "sim/report/figure_clock.h"
 #include "sim/report/figure_cost.h"
 #include "sim/report/figure_estimates.h"
 #include "sim/report/figure_extrapolation.h"
 #include "sim/report/figure_map.h"
+#include "sim/report/figure_margins.h"
 #include "sim/report/figure_power.h"
 #include "sim/report/figure_tops.h"
 #include "sim/report/json_out_plan.h"
 #include "sim/report/json_out_print.h"
+#include "sim/report/proposal.h"
 #include "sim/report/report_files.h"
 #include "sim/report/terminal_plan.h"
 #include "sim/report/terminal_trial.h"
@@ -34,8 +38,9 @@ static bool save_candidates(const struct report_context *context, const struct s
     return files_text_save(&text, context->folder, "candidates.csv", failure);
 }
 
-static bool draw_plan(const struct report_context *context, const struct report_planned *planned,
-                      struct files_failure *failure)
+/* The figures, then the report that shows them. */
+static bool save_proposal(const struct report_context *context, const struct report_planned *planned,
+                          const struct warnings *warnings, struct files_failure *failure)
 {
     const struct search_result *r = planned->search;
     const struct question *q = scenario_question(context->scenario);
@@ -45,11 +50,16 @@ static bool draw_plan(const struct report_context *context, const struct report_
         good = figure_estimates(&pen, q, r->recommended != SEARCH_NONE ? &r->fresh : &r->nearest, planned->estimates);
     if (good && planned->map)
         good = figure_map(&pen, q, planned->map);
-    if (good)
-        report_files_drawn(context, &pen);
-    else
+    if (good && planned->budget && planned->budget->outcome.studies > 0)
+        good = figure_budget(&pen, planned->budget) && figure_claimed(&pen, planned->budget);
+    if (good && planned->margins && planned->margins->outcome.studies > 0)
+        good = figure_margins(&pen, q, planned->margins);
+    if (!good) {
         *failure = pen.failure;
-    return good;
+        return false;
+    }
+    report_files_drawn(context, &pen);
+    return proposal_write(context, planned, warnings, &pen, failure);
 }
 
 static bool draw_trial(const struct report_context *context, const struct report_tried *tried,
@@ -103,7 +113,7 @@ int report_plan(const struct report_context *context, const struct report_planne
            save_candidates(context, r, &failure);
     if (good && r->recommended != SEARCH_NONE)
         good = report_files_scenario(context, "recommended.yaml", (size_t)r->recommended, &failure);
-    good = good && report_files_json(context, "plan.json", object, &failure) && draw_plan(context, planned, &failure) &&
+    good = good && report_files_json(context, "plan.json", object, &failure) && save_proposal(context, planned, warnings, &failure) &&
            report_files_log(context, &failure);
     if (good) {
         const struct page page = page_on(context->out);

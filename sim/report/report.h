@@ -58,7 +58,8 @@ struct report_tried {
 double report_clock(void);
 
 /* Write plan.json, candidates.csv, recommended.yaml (when something
- * resolves), scenario.resolved.yaml, run.log and the figures, then answer.
+ * resolves), scenario.resolved.yaml, run.log, the figures, report.md and
+ * report.html, then answer.
  * 0, or 1 after a message when a file could not be written; without gnuplot
  * the figures are left out, their numbers not, and one line says so. */
 int report_plan(const struct report_context *context, const struct report_planned *planned);

@@ -6,8 +6,7 @@
 #include <time.h>
 #include <unistd.h>
 
-/* An argument as a shell would take it back. */
-static void argument(FILE *to, const char *text)
+void run_log_argument(FILE *to, const char *text)
 {
     static const char plain[] = "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ0123456789_-+=./:,%@";
     if (*text && text[strspn(text, plain)] == '\0') {
@@ -59,7 +58,7 @@ void run_log_print(FILE *to, const struct report_context *context)
     fprintf(to, "vicinal %s\ncommand:", context->version);
     for (size_t i = 0; i < context->arguments_count; i++) {
         fputc(' ', to);
-        argument(to, context->arguments[i]);
+        run_log_argument(to, context->arguments[i]);
     }
     fputc('\n', to);
     host(to);

@@ -9,4 +9,7 @@
  * and how long it took. */
 void run_log_print(FILE *to, const struct report_context *context);
 
+/* An argument as a shell would take it back. */
+void run_log_argument(FILE *to, const char *text);
+
 #endif

@@ -4,7 +4,7 @@
 #include <string.h>
 
 #include "sim/report/json_out_print.h"
-#include "sim/report/run_log.h"
+#include "sim/report/report_files.h"
 #include "sim/report/say.h"
 #include "sim/report/sheet_json.h"
 #include "sim/report/sheet_notebook.h"
@@ -24,12 +24,6 @@ struct job {
     json_t *object;
     struct files_failure failure;
 };
-
-static bool without_memory(struct job *job)
-{
-    snprintf(job->failure.text, sizeof job->failure.text, "out of memory");
-    return false;
-}
 
 /* What stands where the notebooks go: 0, or the status to end with. */
 static int look(struct job *job)
@@ -56,52 +50,31 @@ static bool save_notebooks(struct job *job)
     bool good = true;
     for (size_t i = 0; i < job->work.polymers && good; i++) {
         char *path = files_path(job->context->folder, notebook_name[i]);
-        good = path ? sheet_notebook_write(&job->work, path, &job->failure) : without_memory(job);
+        good = path ? sheet_notebook_write(&job->work, path, &job->failure) : report_files_memory(&job->failure);
         free(path);
     }
     return good;
 }
 
-static bool save_text(struct job *job, const char *name, void (*print)(FILE *, const struct job *))
+static bool save_page(struct job *job)
 {
     struct files_text text;
     if (!files_text_open(&text))
-        return without_memory(job);
-    print(text.stream, job);
-    return files_text_save(&text, job->context->folder, name, &job->failure);
-}
-
-static void print_page(FILE *to, const struct job *job)
-{
-    sheet_page_print(to, job->context, &job->work, job->warnings);
-}
-
-static void print_log(FILE *to, const struct job *job)
-{
-    run_log_print(to, job->context);
-}
-
-/* The scenario cut to this plan, where it holds more than one. */
-static bool save_scenario(struct job *job)
-{
-    const struct scenario *s = job->context->scenario;
-    char *yaml = scenario_resolved_yaml(s, scenario_candidates(s) > 1 ? job->work.plan->index : SIZE_MAX);
-    char *path = yaml ? files_path(job->context->folder, "scenario.resolved.yaml") : NULL;
-    const bool good = path ? files_write(path, yaml, strlen(yaml), &job->failure) : without_memory(job);
-    free(path);
-    free(yaml);
-    return good;
+        return report_files_memory(&job->failure);
+    sheet_page_print(text.stream, job->context, &job->work, job->warnings);
+    return files_text_save(&text, job->context->folder, "sheet.html", &job->failure);
 }
 
 static void times(const struct page *page, const struct sheet_work *w)
 {
-    for (size_t i = 0; i < w->design.liquids; i++) {
+    for (size_t k = 0; k < DESIGN_MAX_LIQUIDS; k++) {
+        const size_t i = k == 0 ? DESIGN_WATER : k == 1 ? DESIGN_BLANK : k - 1; /* the blank after the water */
         const struct expected_time *t = &w->expected[0].time[i];
         const struct design_liquid *q = &w->design.liquid[i];
         char label[32];
         if (!(t->mean_s > 0.0))
             continue;
-        if (i < DESIGN_LEVELS)
+        if (i == DESIGN_WATER || i == DESIGN_BLANK)
             snprintf(label, sizeof label, "%s", i == DESIGN_WATER ? "water" : "blank");
         else
             snprintf(label, sizeof label, "%s %zu", q->series == INTACT ? "intact" : "cleaved", q->level + 1);
@@ -138,7 +111,8 @@ static void answer(const struct job *job)
               say_while(cost->dissolving_wait_s).text, say_while(cost->cleavage_wait_s).text);
     weighings(&page, w);
     page_blank(&page);
-    page_say(&page, PAGE_BOLD, "Expected times, and the range outside which to look for a bubble or a mistake");
+    page_say(&page, PAGE_BOLD, "Expected times%s, and the range outside which to look for a bubble or a mistake",
+             w->polymers > 1 ? " of the first polymer" : "");
     times(&page, w);
     terminal_warnings(&page, job->warnings);
 }
@@ -147,11 +121,13 @@ static bool prepare(struct job *job, const struct plan *plan)
 {
     struct outcome nominal = {0};
     if (!sheet_work_make(job->context->scenario, plan, &job->work))
-        return without_memory(job);
+        return report_files_memory(&job->failure);
     outcome_nominal(job->context->scenario, plan, &job->work.design, &nominal);
+    if (!sheet_work_why(&job->work))
+        nominal.studies = EXPECTED_STUDIES; /* played, though not judged: warn of its nominal times and molar masses */
     job->warnings = warnings_collect(job->context->scenario, plan, &nominal, false);
     job->object = job->warnings ? sheet_json_make(job->context, &job->work, job->warnings) : NULL;
-    return job->object ? true : without_memory(job);
+    return job->object ? true : report_files_memory(&job->failure);
 }
 
 static int tell_why(struct job *job)
@@ -170,8 +146,11 @@ static int write_all(struct job *job)
     const int there = look(job);
     if (there != DONE)
         return there;
-    const bool good = files_folder(c->folder, &job->failure) && save_scenario(job) && save_notebooks(job) &&
-                      save_text(job, "sheet.html", print_page) && save_text(job, "run.log", print_log);
+    /* cut to this plan, where the scenario holds more than one */
+    const size_t cut = scenario_candidates(c->scenario) > 1 ? job->work.plan->index : SIZE_MAX;
+    const bool good = files_folder(c->folder, &job->failure) &&
+                      report_files_scenario(c, "scenario.resolved.yaml", cut, &job->failure) && save_notebooks(job) &&
+                      save_page(job) && report_files_log(c, &job->failure);
     if (!good)
         return FAILED;
     if (c->json)
@@ -189,12 +168,10 @@ int sheet_write(const struct report_context *context, size_t index)
     scenario_plan(context->scenario, index, &plan);
     if (prepare(&job, &plan))
         status = sheet_work_why(&job.work) ? tell_why(&job) : write_all(&job);
-    if ((status == DONE || status == IMPOSSIBLE) && (fflush(context->out) != 0 || ferror(context->out))) {
-        snprintf(job.failure.text, sizeof job.failure.text, "the answer could not be written");
+    if ((status == DONE || status == IMPOSSIBLE) && !report_files_flushed(context, &job.failure))
         status = FAILED;
-    }
     if (status == FAILED || status == REFUSED)
-        fprintf(context->err, "vicinal: %s\n", *job.failure.text ? job.failure.text : "out of memory");
+        report_files_failed(context, &job.failure);
     json_decref(job.object);
     warnings_free(job.warnings);
     sheet_work_free(&job.work);

@@ -108,7 +108,7 @@ static void weighings(FILE *to, const struct sheet_work *w)
 /* As received: dry mass over dry content, tabulated where it mostly lies. */
 static void moisture(FILE *to, const struct sheet_work *w)
 {
-    static const double dry[] = {1.0, 0.98, 0.96, 0.94, 0.92};
+    static const double dry[] = {1.0, 0.98, 0.96, 0.94};
     fprintf(to,
             "<p>Grams of polymer as received are grams of dry polymer divided by its dry, ash-free share, found by "
             "drying a sample: %s&nbsp;%%. The plan takes it as known to %s (standard uncertainty).</p>\n",
@@ -148,9 +148,9 @@ static void cleave(FILE *to, const struct sheet_work *w)
     fputs("<h3>Cleave</h3>\n<p>Reagent as your procedure says. ", to);
     if (w->aliquot_m3 > 0.0)
         fprintf(to,
-                "Take at least %s of the shared stock for it and add the reagent dry, so that the volume stays; the "
+                "Take at least %s mL of the shared stock for it and add the reagent dry, so that the volume stays; the "
                 "rest of the stock stays intact.",
-                say_volume(w->aliquot_m3).text);
+                say_short(say_mL(w->aliquot_m3), 4).text);
     else
         fprintf(to,
                 "It goes into the flask of the cleaved stock, which is made up to the mark with the reagent in it and "
@@ -160,9 +160,9 @@ static void cleave(FILE *to, const struct sheet_work *w)
             say_while(cost->cleavage_s).text, say_while(cost->cleavage_wait_s).text, say_share(c->conversion).text);
     if (w->blank_m3 > 0.0)
         fprintf(to,
-                "<p>Make at least %s of blank: water with the spent reagent at the strength of the cleaved stock, "
+                "<p>Make at least %s mL of blank: water with the spent reagent at the strength of the cleaved stock, "
                 "without polymer.</p>\n",
-                say_volume(w->blank_m3).text);
+                say_short(say_mL(w->blank_m3), 4).text);
 }
 
 static struct say name_of(const struct sheet_work_level *level)

@@ -138,7 +138,7 @@ static void runs(FILE *to, const struct sheet_work *w, const struct sheet_work_r
 static void filling(FILE *to, const struct sheet_work *w, const struct sheet_work_row *row, size_t polymer)
 {
     fprintf(to, "<tr><td class=\"clock\" data-is=\"Clock\">%s %s<br>", say_clock(row->begins_s).text,
-            row->filling->added ? "add, mix" : "clean, fill");
+            row->filling->added ? "add" : "fill");
     fprintf(to, "%s first run<br>", say_clock(row->first_run_s).text);
     fprintf(to, "%s done</td><td class=\"liquid\" data-is=\"In the tube\">", say_clock(row->ends_s).text);
     liquid(to, w, row);
@@ -172,7 +172,7 @@ static size_t day(FILE *to, const struct sheet_work *w, struct repeat repeat, si
             "class=\"blank\"></span></p>\n",
             say_clock(w->row[end - 1].ends_s).text);
     fputs("<table class=\"stack time\">\n<thead><tr><th scope=\"col\">Clock</th><th scope=\"col\">In the tube</th>"
-          "<th scope=\"col\">Expected, each run</th><th scope=\"col\">Read</th></tr></thead>\n<tbody>\n",
+          "<th scope=\"col\">Expected</th><th scope=\"col\">Read</th></tr></thead>\n<tbody>\n",
           to);
     for (size_t i = first; i < end; i++)
         filling(to, w, &w->row[i], repeat.polymer);

@@ -42,7 +42,7 @@ static void shares(const struct page *page, const struct budget *b)
         fprintf(page->to, "  %-20s", sources_name(order[i]));
         share(page, g->first, g->first_se);
         share(page, g->total, g->total_se);
-        fprintf(page->to, "  %16s\n", say_by_error(say_percent(g->alone_sd), say_percent(g->alone_sd_se)).text);
+        fprintf(page->to, "  %16s\n", say_digits(say_percent(g->alone_sd), 3).text);
     }
     page_say(page, PAGE_PLAIN, "(In total: with all it takes part in. Alone: the standard deviation that it causes "
              "when every other spread is zero.)");
@@ -58,8 +58,7 @@ static void shifts(const struct page *page, const struct budget *b)
     for (int i = 0; i < BUDGET_BIASES; i++) {
         const double shift = say_percent(b->bias[i].shift), se = say_percent(b->bias[i].se);
         if (isfinite(shift))
-            fprintf(page->to, "  %-34s %s%s +- %s\n", budget_bias_name((enum budget_bias)i), shift < 0.0 ? "" : "+",
-                    say_by_error(shift, se).text, say_digits(se, 2).text);
+            fprintf(page->to, "  %-34s %+.4f +- %.4f\n", budget_bias_name((enum budget_bias)i), shift, se);
     }
 }
 

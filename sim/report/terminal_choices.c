@@ -3,40 +3,9 @@
 #include <math.h>
 #include <string.h>
 
+#include "sim/report/decisions.h"
 #include "sim/report/say.h"
 #include "sim/report/terminal.h"
-
-enum decision { GRADE_AND_GLASS, REPLICATES, TEMPERATURE, REDUCING, DECISIONS };
-
-static const char *const decision_name[DECISIONS] = {"Grade and glass to buy", "Replicates and concentrations",
-                                                     "Temperature control", "How to reduce"};
-
-static const struct {
-    const char *key;
-    enum decision decision;
-} belongs[] = {
-    {"material", GRADE_AND_GLASS},
-    {"grade", GRADE_AND_GLASS},
-    {"tube", GRADE_AND_GLASS},
-    {"timer", GRADE_AND_GLASS},
-    {"bath", TEMPERATURE},
-    {"thermometer", TEMPERATURE},
-    {"temperature_record", TEMPERATURE},
-    {"extrapolation", REDUCING},
-    {"weighting", REDUCING},
-    {"density", REDUCING},
-    {"kinetic_energy", REDUCING},
-    {"chain_statistics", REDUCING},
-};
-
-/* Keys that stand in no other row are replicates and concentrations. */
-static enum decision decision_of(const char *key)
-{
-    for (size_t i = 0; i < sizeof belongs / sizeof *belongs; i++)
-        if (strcmp(belongs[i].key, key) == 0)
-            return belongs[i].decision;
-    return REPLICATES;
-}
 
 /* How wide the column of options must be, over all tables. */
 static int option_columns(const struct scenario *s)
@@ -121,11 +90,11 @@ void terminal_choices(const struct page *page, const struct scenario *scenario, 
     for (int d = 0; d < DECISIONS; d++) {
         bool headed = false;
         for (size_t k = 0; k < scenario_keys(scenario); k++) {
-            if (scenario_options(scenario, k) < 2 || decision_of(scenario_key(scenario, k)) != (enum decision)d)
+            if (scenario_options(scenario, k) < 2 || decisions_of(scenario_key(scenario, k)) != (enum decisions)d)
                 continue;
             if (!headed) {
                 page_blank(page);
-                page_say(page, PAGE_BOLD, "%s", decision_name[d]);
+                page_say(page, PAGE_BOLD, "%s", decisions_name((enum decisions)d));
             }
             headed = true;
             key_lines(page, scenario, search, k);

@@ -1,12 +1,11 @@
 #include "sim/report/terminal_plan.h"
 
-#include <math.h>
 #include <stdlib.h>
-#include <string.h>
 
 #include "sim/report/say.h"
 #include "sim/report/terminal_budget.h"
 #include "sim/report/terminal_choices.h"
+#include "sim/report/ways_out.h"
 
 static struct terminal_subject subject_of(const struct scenario *s, long index, struct plan *plan,
                                           const struct outcome *outcome)
@@ -29,74 +28,24 @@ static void resolved(const struct page *page, const struct report_context *conte
     terminal_bench(page, &subject);
 }
 
-/* What the nearest miss could be asked instead, rounded to the safe side. */
-static void wider_question(const struct page *page, const struct question *q, const struct outcome *o)
-{
-    char text[120];
-    if (q->has_against && isfinite(o->resolvable_against)) {
-        const bool more = q->expect > q->against;
-        const double points = say_percent(o->resolvable_against) * 100.0;
-        const double safe = (more ? floor(points) : ceil(points)) / 100.0;
-        snprintf(text, sizeof text, "ask the wider question (question.against: %.2f %%)", safe);
-        if (safe > 0.0)
-            page_point(page, text);
-    }
-    if (q->has_within && isfinite(o->resolvable_within)) {
-        const double safe = ceil(say_percent(o->resolvable_within) * 100.0) / 100.0;
-        snprintf(text, sizeof text, "ask the wider question (question.within: %.2f %%)", safe);
-        page_point(page, text);
-    }
-}
-
 static void way_out(const struct page *page, const struct question *q, const struct search_result *r)
 {
-    const bool constants = r->constants_are_limit || (q->has_within && r->within_too_narrow);
-    const bool bench = !r->constants_are_limit;
-    const char *limit = "The bench is the limit: even with K and a known exactly this plan would not resolve.";
-    if (!bench)
-        limit = "The constants are the limit, not the bench: with K and a known exactly this plan would resolve.";
-    else if (constants)
-        limit = "Both are the limit: the uncertainty of K and a alone is too wide, and even with K and a known exactly "
-                "this plan would not resolve.";
+    struct ways_out ways;
+    ways_out_list(q, r, &ways);
     page_blank(page);
-    page_say(page, PAGE_BOLD, "%s", limit);
+    page_say(page, PAGE_BOLD, "%s", ways_out_limit(q, r));
     page_say(page, PAGE_PLAIN, "Ways out:");
-    if (constants)
-        page_point(page, "compare with a fraction found with the same K and a, whose uncertainty cancels then "
-                         "(question.against_is: same-constants)");
-    if (constants && q->has_against && q->against_is == AGAINST_STATED)
-        page_point(page, "measure a second polymer of the same grade alongside, which shares K and a "
-                         "(question.against_is: measured)");
-    if (bench)
-        page_point(page, "offer more replicates, a steadier bath, a finer thermometer or another tube");
-    wider_question(page, q, &r->nearest);
+    for (size_t i = 0; i < ways.count; i++)
+        page_point(page, ways.text[i]);
 }
 
-/* Why nothing was possible: the reasons that were found, each once, with the
- * number of plans that it strikes out. */
 static void reasons(const struct page *page, const struct search_result *r)
 {
-    enum { SHOWN = 5 };
-    size_t shown = 0;
-    for (size_t i = 0; i < r->count && shown < SHOWN; i++) {
-        const char *why = r->candidates[i].outcome.why;
-        size_t same = 0, before = 0;
-        if (!why[0])
-            continue;
-        for (size_t k = 0; k < r->count; k++)
-            if (strcmp(r->candidates[k].outcome.why, why) == 0) {
-                same++;
-                if (k < i)
-                    before++;
-                if (before)
-                    break;
-            }
-        if (before)
-            continue;
-        page_item(page, say_plural(same, "plan").text, "%s: %s", outcome_status_text(r->candidates[i].outcome.status),
-                  why);
-        shown++;
-    }
+    struct ways_out_reason reason[WAYS_OUT_REASONS];
+    const size_t count = ways_out_reasons(r, reason);
+    for (size_t i = 0; i < count; i++)
+        page_item(page, say_plural(reason[i].plans, "plan").text, "%s: %s", outcome_status_text(reason[i].status),
+                  reason[i].why);
 }
 
 static void missed(const struct page *page, const struct report_context *context, const struct search_result *r)

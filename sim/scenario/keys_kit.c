@@ -37,7 +37,7 @@ const struct keys_row keys_kit_grades[] = {
      .help = "of the chain lengths, by number", .source = "free-radical polymerisation",
      KEYS_INTO(struct grade, distribution)},
     {.key = "dispersity", .kind = KEYS_QUANTITY, .dimension = UNITS_PLAIN, .unit = "", .min = 1,
-     .max = 2.5, .none = "2 with most-probable, 1 with uniform; must be given with the others",
+     .max = 2.5, .none = "2 (most-probable), 1 (uniform), else none",
      .help = "weight over number average", .source = "Flory and Leutner 1948: Mv/Mn = 1.89 is 2 at a = 0.76",
      KEYS_INTO(struct grade, dispersity)},
     {.key = "hydrolysis", .kind = KEYS_QUANTITY, .dimension = UNITS_FRACTION, .unit = "%", .min = 50, .max = 100,

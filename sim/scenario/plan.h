@@ -142,7 +142,7 @@ struct plan {
     size_t runs, water_fillings, water_runs;
     enum order order;
     struct analysis analysis;
-    const struct chains *chains; /* of the grade, for this pair */
+    const struct chains *chains; /* of the grade, for this pair; not looked at when they are most-probable */
     uint64_t seed;               /* deals a shuffled order */
 };
 

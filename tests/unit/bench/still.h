@@ -88,18 +88,20 @@ struct still_bench {
     void *scratch, *slot;
     struct notebook book;        /* of the last block shown */
     double (*started_s)[LANES];
+    struct study_shown shown;
 };
 
 static inline void still_open(struct still_bench *b, const struct plan *p, const struct scenario *s, double fraction)
 {
     memset(b, 0, sizeof *b);
-    assert_true(design_make(&b->design, p, scenario_cost(s), scenario_question(s)->expect));
+    assert_true(design_make(&b->design, p, scenario_cost(s), scenario_question(s)));
     assert_string_equal(b->design.why, "");
     b->job = (struct study_job){.design = &b->design, .seed = 20260101, .fractions = 1, .fraction = {fraction}, .analyses = 1, .analysis = &p->analysis};
     b->scratch = calloc(study_scratch_size(&b->job), 1);
     b->slot = calloc(study_slot_size(&b->job), 1);
-    b->started_s = calloc(b->design.layout.fillings, sizeof *b->started_s);
-    assert_true(b->scratch && b->slot && b->started_s);
+    b->started_s = b->shown.trace.started_s = calloc(b->design.layout.fillings, sizeof *b->started_s);
+    b->shown.trace.run = calloc(b->design.layout.fillings * b->design.layout.stride, sizeof *b->shown.trace.run);
+    assert_true(b->scratch && b->slot && b->started_s && b->shown.trace.run);
 }
 
 static inline void still_close(struct still_bench *b)
@@ -107,13 +109,15 @@ static inline void still_close(struct still_bench *b)
     free(b->scratch);
     free(b->slot);
     free(b->started_s);
+    free(b->shown.trace.run);
     design_free(&b->design);
 }
 
 /* Play a block and show its notebook. */
 static inline void still_show(struct still_bench *b, size_t block)
 {
-    study_show(block, &b->job, b->scratch, &b->book, b->started_s);
+    study_show(block, &b->job, 0, b->scratch, &b->shown);
+    b->book = b->shown.book;
 }
 
 /* Estimate of lane 0 of the first block. */
@@ -159,7 +163,7 @@ static inline void still_hand_work(struct still_hand *h, double fraction)
     truth_of(d, &h->draws, fraction, &h->bench.truth);
     for (size_t f = 0; f < d->layout.fillings; f++) {
         if (f == 0 || d->filling[f].day != d->filling[f - 1].day) bench_open_day(&h->bench, day);
-        bench_fill(&h->bench, f, &h->filling);
+        bench_fill(&h->bench, f, &h->filling, (const double[LANES]){0});
     }
 }
 

@@ -81,7 +81,7 @@ static void test_a_study_allocates_nothing(void **state)
     struct design design;
     assert_non_null(s);
     scenario_plan(s, 0, &plan);
-    assert_true(design_make(&design, &plan, scenario_cost(s), 0.015));
+    assert_true(design_make(&design, &plan, scenario_cost(s), scenario_question(s)));
     const struct study_job job = {.design = &design, .seed = 1, .fractions = 2, .fraction = {0.015, 0.012}, .analyses = 1, .analysis = &plan.analysis};
     count_calls();
     calls = 0;

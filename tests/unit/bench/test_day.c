@@ -184,7 +184,7 @@ static void drift_and_room(void **state)
         FOR_LANES(l) day[DRAWS_DRIFT][l] = l - 3.0;
         truth_of(&b.design, &h->draws, 0.015, &h->bench.truth);
         bench_open_day(&h->bench, day);
-        for (size_t f = 0; f < 2; f++) bench_fill(&h->bench, f, &h->filling);
+        for (size_t f = 0; f < 2; f++) bench_fill(&h->bench, f, &h->filling, (const double[LANES]){0});
         for (size_t r = 0; r < 2; r++) {
             const struct notebook_run *const run = &notebook_runs(&h->bench.book, 1)[r];
             const double start_s = 1920.0 + 360.0 * (double)r;
@@ -353,7 +353,7 @@ static void brought_to_set(void **state)
         for (int l = 0; l < 3; l++) day[DRAWS_DAY_OFFSET][l] = warmer[l];
         truth_of(&b.design, &h->draws, 0.015, &h->bench.truth);
         bench_open_day(&h->bench, day);
-        bench_fill(&h->bench, 0, &h->filling);
+        bench_fill(&h->bench, 0, &h->filling, (const double[LANES]){0});
         const struct notebook_run *const run = &notebook_runs(&h->bench.book, 0)[0];
         for (int l = 0; l < 3; l++) {
             still_near("warmer", 100.0 * (1.0 - run->time_s[l] / 300.0), percent[l], 5e-4);

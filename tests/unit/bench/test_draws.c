@@ -13,7 +13,7 @@ static void spare_runs_come_behind(void **state)
 {
     (void)state;
     static struct draws_filling few, many;
-    const struct draws_key key = draws_key(5, 160);
+    const struct draws_key key = draws_key(5, 160, (struct draws_exchange){0});
     draws_open_filling(&few, &key, somewhere, 2);
     draws_open_filling(&many, &key, somewhere, 9);
     assert_memory_equal(few.once, many.once, sizeof few.once);
@@ -57,7 +57,7 @@ static void no_place_is_used_twice(void **state)
                 for (unsigned solution = STREAMS_NONE; solution <= STREAMS_CLEAVED; solution++)
                     for (unsigned level = 0; level < 12; level++)
                         for (unsigned filling = 0; filling < 3; filling++) {
-                            const struct draws_key key = draws_key(seed, block * LANES);
+                            const struct draws_key key = draws_key(seed, block * LANES, (struct draws_exchange){0});
                             double out[2][LANES];
                             const struct streams_place place = {.solution = solution, .level = level, .filling = filling};
                             draws_normals(&key, (enum streams_purpose)purpose, place, 2, out);
@@ -98,7 +98,7 @@ static void independent_standard_normals(void **state)
     memset(sum, 0, sizeof sum);
     memset(product, 0, sizeof product);
     for (uint64_t study = 0; study < STUDIES; study += LANES) {
-        const struct draws_key key = draws_key(3, study);
+        const struct draws_key key = draws_key(3, study, (struct draws_exchange){0});
         double row[SLOTS][LANES];
         row_of(&key, row);
         for (size_t i = 0; i < SLOTS; i++) {
@@ -122,7 +122,7 @@ static void bubble_uniform(void **state)
     static struct draws_filling d;
     size_t below = 0, n = 0;
     for (uint64_t study = 0; study < 40000; study += LANES) {
-        const struct draws_key key = draws_key(11, study);
+        const struct draws_key key = draws_key(11, study, (struct draws_exchange){0});
         draws_open_filling(&d, &key, somewhere, 3);
         for (size_t r = 0; r < 3; r++)
             FOR_LANES(l)

@@ -24,7 +24,7 @@ static struct plan plan_by_hand(struct scenario **s)
 static struct design designed(const struct plan *p, const struct scenario *s)
 {
     struct design d;
-    assert_true(design_make(&d, p, scenario_cost(s), 0.015));
+    assert_true(design_make(&d, p, scenario_cost(s), scenario_question(s)));
     design_free(&d);
     return d;
 }
@@ -32,7 +32,7 @@ static struct design designed(const struct plan *p, const struct scenario *s)
 static void is_impossible(const struct plan *p, const struct scenario *s, const char *why)
 {
     struct design d;
-    assert_true(design_make(&d, p, scenario_cost(s), 0.015));
+    assert_true(design_make(&d, p, scenario_cost(s), scenario_question(s)));
     const char *const said = design_why(&d, &p->analysis);
     assert_non_null(said);
     assert_string_equal(said, why);
@@ -229,7 +229,7 @@ static void one_level(void **state)
             struct outcome o;
             p.levels[k] = 1;
             p.analysis.extrapolation = (enum extrapolation)line;
-            assert_true(design_make(&d, &p, scenario_cost(s), 0.015));
+            assert_true(design_make(&d, &p, scenario_cost(s), scenario_question(s)));
             assert_int_equal(design_why(&d, &p.analysis) == NULL, line == SINGLE_POINT);
             still_close_to("the one level is the top", d.liquid[k == INTACT ? 1 : 3].conc_kg_m3, k == INTACT ? 7.2925 : 30.140, 2e-5);
             assert_true(!d.liquid[k == INTACT ? 1 : 3].diluted);

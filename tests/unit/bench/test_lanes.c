@@ -46,7 +46,7 @@ static int set_up(void **state)
     assert_non_null(g);
     g->s = still_read(every_source);
     scenario_plan(g->s, 0, &g->plan);
-    assert_true(design_make(&g->design, &g->plan, scenario_cost(g->s), 0.015));
+    assert_true(design_make(&g->design, &g->plan, scenario_cost(g->s), scenario_question(g->s)));
     assert_string_equal(g->design.why, "");
     spread_set_threads(1);
     start(&g->whole, &g->design, 0);
@@ -126,13 +126,13 @@ static void other_threads(void **state)
 static void other_lanes(void **state)
 {
     const struct stage *const g = *state;
-    const struct draws_key shifted = draws_key(7, 3), usual[2] = {draws_key(7, 0), draws_key(7, LANES)};
+    const struct draws_key shifted = draws_key(7, 3, (struct draws_exchange){0}), usual[2] = {draws_key(7, 0, (struct draws_exchange){0}), draws_key(7, LANES, (struct draws_exchange){0})};
     static struct draws_filling a, b[2];
     struct truth_draws once, before;
     memset(&once, 0, sizeof once);
     memset(&before, 0, sizeof before);
-    truth_draw(&g->design, &shifted, &once);
-    truth_draw(&g->design, &usual[0], &before);
+    truth_draw(&g->design, &shifted, (struct truth_where){0, 0}, &once);
+    truth_draw(&g->design, &usual[0], (struct truth_where){0, 0}, &before);
     const struct streams_place place = {.solution = STREAMS_CLEAVED, .level = 2, .filling = 1};
     draws_open_filling(&a, &shifted, place, 3);
     for (int i = 0; i < 2; i++) draws_open_filling(&b[i], &usual[i], place, 3);

@@ -31,7 +31,7 @@ static struct streams_place place_of(const struct notebook_filling *f)
 static void bubbles(const struct still_bench *b, size_t block, double chance, bool any[LANES])
 {
     static struct draws_filling d;
-    const struct draws_key key = draws_key(b->job.seed, (uint64_t)block * LANES);
+    const struct draws_key key = draws_key(b->job.seed, (uint64_t)block * LANES, (struct draws_exchange){0});
     FOR_LANES(l) any[l] = false;
     for (size_t f = 0; f < b->design.layout.fillings; f++) {
         const struct notebook_filling *const filling = &b->design.filling[f];

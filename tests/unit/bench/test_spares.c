@@ -88,8 +88,13 @@ static void clock_and_count(void **state)
     struct still_hand *const h = still_hand_open(&b.design);
     double begins_s[3][LANES];
     for (size_t r = 0; r < RUNS; r++) FOR_LANES(l) h->filling.run[r][DRAWS_HAND][l] = cases[l].off_s[r];
-    h->bench.started_s = begins_s;
+    struct bench_traced_run *const runs = calloc(3 * b.design.layout.stride, sizeof *runs);
+    assert_non_null(runs);
+    const struct bench_trace trace = {begins_s, runs};
+    h->bench.trace = &trace;
     still_hand_work(h, 0.015);
+    h->bench.trace = NULL;
+    free(runs);
     FOR_LANES(l)
     {
         const double spare = cases[l].made - 3.0;

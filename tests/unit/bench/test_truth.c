@@ -30,7 +30,7 @@ static struct stage *stage(void)
 static void laid_out(struct stage *g)
 {
     design_free(&g->d);
-    assert_true(design_make(&g->d, &g->p, scenario_cost(g->s), 0.015));
+    assert_true(design_make(&g->d, &g->p, scenario_cost(g->s), scenario_question(g->s)));
     assert_string_equal(g->d.why, "");
 }
 
@@ -43,8 +43,8 @@ static void leave(struct stage *g)
 
 static void next(struct stage *g, uint64_t study)
 {
-    const struct draws_key key = draws_key(77, study);
-    truth_draw(&g->d, &key, &g->draws);
+    const struct draws_key key = draws_key(77, study, (struct draws_exchange){0});
+    truth_draw(&g->d, &key, (struct truth_where){0, 0}, &g->draws);
     truth_of(&g->d, &g->draws, 0.015, &g->truth);
 }
 
@@ -227,9 +227,9 @@ static void conversion_and_hydrolysis(void **state)
                 const double X = drawn <= 1.0 ? drawn : 1.0 - (drawn - 1.0);
                 reflected += drawn > 1.0;
                 if (study > 800) continue;
-                const struct scission_chains cut = scission_cut(g->p.cleavage.neighbours, 0.015, (struct scission_chance){kind ? X * X : X, 0.0}, g->d.chains.xn);
+                const struct scission_chains cut = scission_cut(g->p.cleavage.neighbours, 0.015, (struct scission_chance){kind ? X * X : X, 0.0}, g->d.lengths.xn);
                 const double unit = kind ? X * 0.04405 + (1.0 - X) * 0.08609 : g->d.chains.unit_kg_mol;
-                const double expected = 2e-5 * pow(1000.0 * unit * scission_xv(&g->d.sums, &cut), 0.76) / g->d.chains.intrinsic_m3_kg[CLEAVED];
+                const double expected = 2e-5 * pow(1000.0 * unit * scission_xv(&g->d.lengths.sums, &cut), 0.76) / g->d.chains.intrinsic_m3_kg[CLEAVED];
                 still_close_to("[eta]'", thick(g, CLEAVED, l), expected, 1e-12);
                 still_close_to("[eta]", thick(g, INTACT, l), 1.0, 1e-14);
             }

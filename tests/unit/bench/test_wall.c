@@ -13,7 +13,7 @@ static const char *const every_source =
  * hand. */
 static void work(const struct design *d, const struct draws_key *key, struct still_hand *h, double fraction)
 {
-    truth_draw(d, key, &h->draws);
+    truth_draw(d, key, (struct truth_where){0, 0}, &h->draws);
     truth_of(d, &h->draws, fraction, &h->bench.truth);
     for (size_t f = 0; f < d->layout.fillings; f++) {
         const struct notebook_filling *const filling = &d->filling[f];
@@ -26,7 +26,7 @@ static void work(const struct design *d, const struct draws_key *key, struct sti
             bench_open_day(&h->bench, day);
         }
         draws_open_filling(&h->filling, key, place, filling->runs);
-        bench_fill(&h->bench, f, &h->filling);
+        bench_fill(&h->bench, f, &h->filling, (const double[LANES]){0});
     }
 }
 
@@ -35,7 +35,7 @@ static void the_truth_is_not_seen(struct plan *p, const struct scenario *s)
     struct still_bench b;
     still_open(&b, p, s, 0.015);
     for (size_t block = 0; block < 40; block++) {
-        const struct draws_key key = draws_key(b.job.seed, (uint64_t)block * LANES);
+        const struct draws_key key = draws_key(b.job.seed, (uint64_t)block * LANES, (struct draws_exchange){0});
         struct still_hand *const h = still_hand_open(&b.design);
         study_play(block, &b.job, b.slot, b.scratch);
         work(&b.design, &key, h, 0.015);
@@ -85,7 +85,7 @@ static void assumed_are_nominal_values(void **state)
     still.material.hydrolysis = loud.material.hydrolysis; /* these are nominal */
     still.cleavage.conversion = loud.cleavage.conversion;
     still.cleavage.nonspecific = loud.cleavage.nonspecific;
-    assert_true(design_make(&a, &loud, scenario_cost(s), 0.015) && design_make(&b, &still, scenario_cost(s), 0.015));
+    assert_true(design_make(&a, &loud, scenario_cost(s), scenario_question(s)) && design_make(&b, &still, scenario_cost(s), scenario_question(s)));
     a.assumed.sums = b.assumed.sums = NULL;
     assert_memory_equal(&a.assumed, &b.assumed, sizeof a.assumed);
     design_free(&a);

@@ -22,7 +22,7 @@ static void enter(struct stage *g, const char *question)
     g->s = still_read(yaml);
     scenario_plan(g->s, 0, &g->p);
     still_make(&g->p);
-    assert_true(design_make(&g->d, &g->p, scenario_cost(g->s), 0.015));
+    assert_true(design_make(&g->d, &g->p, scenario_cost(g->s), scenario_question(g->s)));
     play_start(&g->play, &g->d, 1);
     outcome_fractions(scenario_question(g->s), &g->play);
     g->play.analyses = 1;
@@ -188,7 +188,7 @@ static void plain_false_alarms(void **state)
     enter(&g, "against: 1.2 %");
     for (int biased = 0; biased < 2; biased++) {
         for (uint64_t study = 0; study < N; study += LANES) {
-            const struct draws_key key = draws_key(5, study);
+            const struct draws_key key = draws_key(5, study, (struct draws_exchange){0});
             double x[1][LANES];
             draws_normals(&key, STREAMS_STUDY, (struct streams_place){0}, 1, x);
             FOR_LANES(l)

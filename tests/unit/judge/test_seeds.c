@@ -49,7 +49,7 @@ static void spread_over_printed_error(void **state)
     struct design d;
     struct sample figure[FIGURES] = {{0}}, printed[FIGURES] = {{0}}, shortest = {0}, shortest_printed = {0};
     scenario_plan(s, 0, &p);
-    assert_true(design_make(&d, &p, scenario_cost(s), 0.015));
+    assert_true(design_make(&d, &p, scenario_cost(s), scenario_question(s)));
     for (uint64_t seed = 1; seed <= SEEDS; seed++) {
         struct outcome o;
         double at[FIGURES], se[FIGURES];

@@ -30,7 +30,7 @@ static void lay(struct laid *l)
     l->scenario = scenario_read(&request, l->complaints);
     assert_non_null(l->scenario);
     scenario_plan(l->scenario, 0, &l->plan);
-    assert_true(design_make(&l->design, &l->plan, scenario_cost(l->scenario), scenario_question(l->scenario)->expect));
+    assert_true(design_make(&l->design, &l->plan, scenario_cost(l->scenario), scenario_question(l->scenario)));
 }
 
 static void clear(struct laid *l)
@@ -64,7 +64,7 @@ struct desk {
 static void carry(struct desk *desk, const struct design *d, const struct notebook *book)
 {
     const size_t bytes = d->layout.fillings * sizeof *desk->filling, size = notebook_size(&d->layout);
-    desk->sums = d->sums;
+    desk->sums = d->lengths.sums;
     desk->assumed = d->assumed;
     desk->assumed.sums = &desk->sums;
     desk->filling = malloc(bytes);
@@ -105,11 +105,12 @@ static void truth_is_not_needed(void **state)
         .design = &l.design, .seed = 1, .fractions = 1, .fraction = {expect}, .analyses = WAYS, .analysis = ways};
     const size_t scratch_size = study_scratch_size(&job);
     void *const scratch = calloc(1, scratch_size);
-    double(*const started_s)[LANES] = calloc(l.design.layout.fillings, sizeof *started_s);
-    struct notebook book;
+    const struct notebook_layout *const layout = &l.design.layout;
+    struct study_shown shown = {.trace = {calloc(layout->fillings, sizeof(double[LANES])),
+                                          calloc(layout->fillings * layout->stride, sizeof(struct bench_traced_run))}};
     struct desk desk;
-    study_show(0, &job, scratch, &book, started_s);
-    carry(&desk, &l.design, &book);
+    study_show(0, &job, 0, scratch, &shown);
+    carry(&desk, &l.design, &shown.book);
     memset(scratch, 0, scratch_size); /* truth, bench and draws */
     clear(&l);                        /* the scenario */
     memset(&l, 0xff, sizeof l);       /* the plan and its design */
@@ -122,7 +123,8 @@ static void truth_is_not_needed(void **state)
     free(desk.memory);
     free(desk.filling);
     free(scratch);
-    free(started_s);
+    free(shown.trace.started_s);
+    free(shown.trace.run);
 }
 
 /* What an analyst assumes is that of the expected fraction, whatever the world

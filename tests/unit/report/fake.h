@@ -111,6 +111,15 @@ const char *scenario_zero_source(const struct scenario *s, size_t i)
     (void)s;
     return i == 0 ? "bench.tilt_u" : "kit.baths.circulator.drift_u";
 }
+bool scenario_quantity(const struct scenario *s, const char *section, const char *key, struct scenario_quantity *out)
+{
+    (void)s;
+    (void)section;
+    (void)key;
+    (void)out;
+    return false;
+}
+
 char *scenario_resolved_yaml(const struct scenario *s, size_t index)
 {
     (void)s;

@@ -77,8 +77,8 @@ static void notebook(void **state)
 {
     (void)state;
     const struct notebook_row rows[] = {
-        {1, 1080.0, "water", 0, (double)NAN, 1, 1, 298.314, 298.153},
-        {1, 4000.0, "intact", 2, 3.36, 1, 4, 441.5, (double)NAN},
+        {1, 1, 1080.0, "water", 0, (double)NAN, 1, 1, 298.314, 298.153},
+        {1, 1, 4000.0, "intact", 2, 3.36, 1, 4, 441.5, (double)NAN},
     };
     const struct notebook_csv n = {.title = "A made-up\nstudy",
                                    .plan = "",

@@ -241,9 +241,9 @@ static void says_ranges_and_words(void **state)
     assert_string_equal(keys_range(row_of("question.expect", 15), range), "above 0 to 20 %");
     assert_string_equal(keys_range(row_of("bench.temperature", 17), range), "5 to 38 degC");
     assert_string_equal(keys_range(row_of("run.studies", 11), range), "16 to 1000000");
-    assert_string_equal(keys_range(row_of("plan.preparations", 17), range), "1");
-    assert_string_equal(keys_words(row_of("plan.order", 10), words), "sequential");
-    assert_string_equal(keys_words(row_of("question.against_is", 19), words), "stated or same-constants");
+    assert_string_equal(keys_range(row_of("plan.preparations", 17), range), "1 to 12");
+    assert_string_equal(keys_words(row_of("plan.order", 10), words), "sequential, shuffled or bracketed");
+    assert_string_equal(keys_words(row_of("question.against_is", 19), words), "stated, same-constants or measured");
     assert_string_equal(keys_words(row_of("plan.extrapolation", 18), words),
                         "huggins, kraemer, martin, common-intercept or single-point");
     assert_string_equal(keys_home("fluctuation", KEYS_BENCH), "kit.baths");
