@@ -6,32 +6,26 @@
 #include <string.h>
 
 #include "sim/base/spread.h"
-#include "sim/judge/forecast.h"
-#include "sim/judge/search.h"
-#include "sim/judge/show.h"
-#include "sim/report/json_out_print.h"
-#include "sim/report/kit_print.h"
-#include "sim/report/progress.h"
-#include "sim/report/report.h"
-#include "sim/report/sheet.h"
-#include "sim/report/times.h"
+#include "sim/report/commands.h"
 
-enum { DONE = 0, FAILED = 1, WRONG = 2, NOT_RESOLVED = 3 };
+enum { DONE = COMMANDS_DONE, FAILED = COMMANDS_FAILED, WRONG = COMMANDS_WRONG };
 enum { MAX_CANDIDATES = 100000 };
 
-enum verb { PLAN, TRIAL, SHEET, KIT, CHECK, VERBS };
-static const char *const verb_name[VERBS] = {"plan", "trial", "sheet", "kit", "check"};
-static const char *const later_verb[] = {"budget", "margin", "reduce"};
+enum verb { PLAN, TRIAL, BUDGET, MARGIN, SHEET, KIT, CHECK, VERBS };
+static const char *const verb_name[VERBS] = {"plan", "trial", "budget", "margin", "sheet", "kit", "check"};
+static const char *const later_verb[] = {"reduce"};
 static const char *const later_option[] = {"--with", "--pilot", "--digits", "--resume", "--self-test"};
 
 static const char help[] =
     "vicinal: plan a head-to-head determination by capillary viscometry\n"
     "\n"
-    "  vicinal plan  SCENARIO     weigh every plan, name the cheapest that resolves\n"
-    "  vicinal trial SCENARIO     one plan in depth\n"
-    "  vicinal sheet SCENARIO     one plan as a bench sheet, with a notebook to fill in\n"
-    "  vicinal kit   [SCENARIO]   everything that can be chosen, and every key\n"
-    "  vicinal check SCENARIO     read and check only\n"
+    "  vicinal plan   SCENARIO    weigh every plan, name the cheapest that resolves\n"
+    "  vicinal trial  SCENARIO    one plan in depth\n"
+    "  vicinal budget SCENARIO    which error source costs how much of one plan's variance\n"
+    "  vicinal margin SCENARIO    how bad each condition may get before one plan fails\n"
+    "  vicinal sheet  SCENARIO    one plan as a bench sheet, with a notebook to fill in\n"
+    "  vicinal kit    [SCENARIO]  everything that can be chosen, and every key\n"
+    "  vicinal check  SCENARIO    read and check only\n"
     "\n"
     "  --out DIR                  where the files go (out/NAME)\n"
     "  --json                     the result on stdout as one JSON object\n"
@@ -133,7 +127,7 @@ static bool take_verb(struct usage *u, const char *word)
             return true;
         }
     if (among(word, later_verb, sizeof later_verb / sizeof *later_verb)) return wrong(word, "not in this version");
-    return wrong(word, "no such command; there are plan, trial, sheet, kit and check");
+    return wrong(word, "no such command; there are plan, trial, budget, margin, sheet, kit and check");
 }
 
 static bool consistent(const struct usage *u)
@@ -175,144 +169,6 @@ static int out_of_memory(void)
     return FAILED;
 }
 
-static void on_progress(void *context, double done)
-{
-    progress_update(context, done);
-}
-
-/* What is reported of a search besides itself, about the recommended plan or
- * the nearest miss: estimates from the studies its figures come from, the
- * resolving map, and where more work makes it worse. */
-struct around {
-    struct estimates estimates;
-    struct survey_map map;
-    struct worse worse[4];
-    size_t worse_count;
-    bool has_map;
-};
-
-static bool look_around(const struct scenario *s, const struct search_result *r, struct around *out)
-{
-    const bool found = r->recommended != SEARCH_NONE;
-    const long index = found ? r->recommended : r->nearest_miss;
-    struct plan plan;
-    struct outcome again;
-    memset(out, 0, sizeof *out);
-    if (index == SEARCH_NONE) return true;
-    scenario_plan(s, (size_t)index, &plan);
-    out->has_map = true;
-    return trial_run(s, &plan, (struct trial_options){.first_study = found ? search_fresh_study(s) : 0}, &again, &out->estimates) &&
-           survey_map_make(s, &plan, &out->map) &&
-           worse_find(s, (size_t)index, sizeof out->worse / sizeof *out->worse, out->worse, &out->worse_count);
-}
-
-static int do_plan(const struct usage *u, const struct report_context *context)
-{
-    struct search_result result;
-    struct around around = {0};
-    struct progress progress;
-    progress_start(&progress, stderr, u->quiet);
-    bool ok = search_run(context->scenario, (struct search_options){.progress = on_progress, .context = &progress}, &result);
-    const bool searched = ok;
-    if (ok) ok = look_around(context->scenario, &result, &around);
-    progress_end(&progress);
-    int status = FAILED;
-    if (ok) {
-        const struct report_planned planned = {.search = &result, .estimates = around.estimates.n ? &around.estimates : NULL,
-                                               .map = around.has_map ? &around.map : NULL, .worse = around.worse, .worse_count = around.worse_count};
-        status = report_plan(context, &planned);
-        if (status == DONE && result.recommended == SEARCH_NONE) status = NOT_RESOLVED;
-    } else
-        out_of_memory();
-    trial_free_estimates(&around.estimates);
-    if (searched) search_free(&result);
-    return status;
-}
-
-/* A scenario that leaves a choice open is refused with the open keys named. */
-static bool closed(const struct scenario *s, const char *path)
-{
-    char open[512] = "";
-    size_t used = 0;
-    for (size_t k = 0; k < scenario_keys(s); k++)
-        if (scenario_options(s, k) > 1 && used < sizeof open)
-            used += (size_t)snprintf(open + used, sizeof open - used, "%s%s", used ? ", " : "", scenario_key(s, k));
-    if (used == 0) return true;
-    fprintf(stderr, "vicinal: %s: this command speaks of one plan, but a choice is open in: %s; close it with --pick KEY=OPTION\n", path, open);
-    return false;
-}
-
-/* All that is played of one plan. */
-struct tried {
-    struct plan plan;
-    struct outcome outcome;
-    struct estimates estimates;
-    struct example example;
-    struct show_notebook notebook;
-    struct survey_curve curve;
-    struct survey_tops tops;
-    bool narrow, played;
-};
-
-static bool try_plan(const struct scenario *s, struct progress *progress, struct tried *t)
-{
-    const struct trial_options options = {.deep = true, .progress = on_progress, .context = progress};
-    const bool curve = scenario_question(s)->has_against;
-    memset(t, 0, sizeof *t);
-    scenario_plan(s, 0, &t->plan);
-    bool ok = trial_run(s, &t->plan, options, &t->outcome, &t->estimates);
-    t->played = ok && t->estimates.n > 0;
-    if (!t->played) return ok;
-    return trial_too_narrow(s, &t->plan, &t->narrow) && show_example(s, &t->plan, 0, &t->example) &&
-           show_notebook_make(s, &t->plan, 0, &t->notebook) && survey_tops_make(s, &t->plan, &t->tops) &&
-           (!curve || survey_curve_make(s, &t->plan, t->outcome.at.critical, &t->curve));
-}
-
-static int do_trial(const struct usage *u, const struct report_context *context)
-{
-    const struct scenario *const s = context->scenario;
-    struct tried t;
-    struct progress progress;
-    if (!closed(s, u->scenario)) return WRONG;
-    progress_start(&progress, stderr, u->quiet);
-    const bool ok = try_plan(s, &progress, &t);
-    progress_end(&progress);
-    int status = FAILED;
-    if (ok) {
-        struct report_tried tried = {.outcome = &t.outcome, .within_too_narrow = t.narrow};
-        if (t.played) {
-            tried.estimates = &t.estimates;
-            tried.example = &t.example;
-            tried.notebook = &t.notebook;
-            tried.tops = &t.tops;
-            if (scenario_question(s)->has_against) tried.curve = &t.curve;
-        }
-        status = report_trial(context, &tried);
-        if (status == DONE && u->times) status = times_write(context, 0, u->times, u->notebooks ? u->notebooks : 1);
-        if (status == DONE && t.outcome.status != STATUS_RESOLVES) status = NOT_RESOLVED;
-    } else
-        out_of_memory();
-    show_notebook_free(&t.notebook);
-    trial_free_estimates(&t.estimates);
-    return status;
-}
-
-static int do_check(const struct report_context *context)
-{
-    double seconds = 0.0;
-    if (!forecast_seconds(context->scenario, &seconds)) return out_of_memory();
-    return report_check(context, seconds);
-}
-
-static int do_kit(const struct report_context *context)
-{
-    if (!context->json) return kit_print_text(context->scenario, stdout);
-    json_t *const object = kit_print_json(context->scenario, context->version);
-    if (!object) return out_of_memory();
-    json_out_print(stdout, object);
-    return DONE;
-}
-
 /* The kit without a scenario. */
 static int bare_kit(struct report_context *context)
 {
@@ -322,9 +178,23 @@ static int bare_kit(struct report_context *context)
     complain_print(complaints, stderr);
     complain_free(complaints);
     context->scenario = s;
-    const int status = s ? do_kit(context) : FAILED;
+    const int status = s ? commands_kit(context) : FAILED;
     scenario_free(s);
     return status;
+}
+
+static int do_verb(const struct usage *u, const struct report_context *context)
+{
+    const struct commands_options options = {u->scenario, u->quiet, u->times, u->notebooks};
+    switch (u->verb) {
+    case PLAN: return commands_plan(context, &options);
+    case TRIAL: return commands_trial(context, &options);
+    case BUDGET: return commands_budget(context, &options);
+    case MARGIN: return commands_margin(context, &options);
+    case SHEET: return commands_sheet(context, &options);
+    case CHECK: return commands_check(context);
+    default: return commands_kit(context);
+    }
 }
 
 static int with_scenario(const struct usage *u, struct report_context *context)
@@ -344,16 +214,8 @@ static int with_scenario(const struct usage *u, struct report_context *context)
     const size_t count = scenario_candidates(s);
     if (u->verb == PLAN && count > MAX_CANDIDATES && !u->yes)
         fprintf(stderr, "vicinal: %s: %zu plans are more than %d; say --yes if that is meant\n", u->scenario, count, MAX_CANDIDATES);
-    else if (u->verb == PLAN)
-        status = do_plan(u, context);
-    else if (u->verb == TRIAL)
-        status = do_trial(u, context);
-    else if (u->verb == SHEET)
-        status = closed(s, u->scenario) ? sheet_write(context, 0) : WRONG;
-    else if (u->verb == CHECK)
-        status = do_check(context);
     else
-        status = do_kit(context);
+        status = do_verb(u, context);
     scenario_free(s);
     return status;
 }

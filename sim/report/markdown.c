@@ -4,7 +4,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-static const char signs[] = "\\`*_{}[]<>&|~#$!\"'^=";
+static const char signs[] = "\\`*_{}[]<>&|~#$!";
 
 /* How many digits a text opens with when they and what follows would open a
  * list: "1." or "1)". */

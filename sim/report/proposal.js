@@ -1,7 +1,7 @@
 // Long tables can be sorted by a column and filtered by words; without this script they are plain tables.
 (function () {
   "use strict";
-  var long = 12;
+  var long = 24;
 
   function number(text) {
     var found = text.replace(/,/g, "").match(/^[+\-]?\d+(\.\d+)?/);

@@ -172,10 +172,10 @@ static void estimates(const struct proposal *p)
     if (!p->outcome || !figures_drawn(p->pen, "estimates"))
         return;
     snprintf(shows, sizeof shows,
-             "Histogram of the estimates of %s simulated studies: mean %s points, standard deviation %s points%s%s.",
+             "Histogram of the estimates of %s simulated studies: mean %s %%, standard deviation %s points%s%s.",
              say_count(p->outcome->studies).text, say_digits(say_percent(p->outcome->at.mean), 4).text,
              say_digits(say_percent(p->outcome->at.sd), 2).text, q->has_against ? "; decided at " : "",
-             q->has_against ? say_points_of(p->outcome->at.critical).text : "");
+             q->has_against ? say_points(p->outcome->at.critical).text : "");
     snprintf(caption, sizeof caption, "How the results of %s simulated studies of this plan scatter%s.",
              say_count(p->outcome->studies).text,
              q->has_against ? ", for both fractions that are to be told apart" : "");

@@ -291,7 +291,7 @@ static void finish(FILE *to, const char *html, const char *contents)
         const char *tag = html, *end = strchr(html, '>');
         const bool written = finish_tag(&f, &html);
         finish_place(&f, tag);
-        if (!written && end) {
+        if (end && (!written || html[-1] == ' ')) { /* all of a tag, or its attributes */
             fwrite(html, 1, (size_t)(end - html) + 1, to);
             html = end + 1;
         } else if (!written) {

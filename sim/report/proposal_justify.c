@@ -211,8 +211,7 @@ static void averaged(const struct budget *b, FILE *to)
         fprintf(to, " What only further preparations average out (%s) is behind %.1f %%.", made, say_percent(of_made));
     if (*study)
         fprintf(to, " What no number of replicates averages out (%s) is behind %.1f %%.", study, say_percent(fixed));
-    fprintf(to, " With endless fillings and runs the standard deviation would fall from %s points to about %s, no further.",
-            say_digits(say_percent(b->outcome.at.sd), 2).text, say_digits(say_percent(reasons_floor_sd(b)), 2).text);
+    fprintf(to, " %s", reasons_endless(b).text);
 }
 
 static void replicates(const struct proposal *p, FILE *to)

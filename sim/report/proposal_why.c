@@ -28,14 +28,15 @@ static void sentences(FILE *to, const struct reasons *why)
 
 /* ---- the budget ---- */
 
-/* "24.20 ± 0.41" in % or points. */
+/* "24.2 ± 0.4" in %. */
 static void with_error(struct markdown_table *table, double value, double se)
 {
     const double error = say_percent(se);
+    const int decimals = error >= 0.095 ? 1 : 2;
     if (!isfinite(value))
         markdown_cell(table, "-");
     else
-        markdown_cell(table, "%s ± %s", say_by_error(say_percent(value), error).text, say_digits(error, 2).text);
+        markdown_cell(table, "%.*f ± %.*f", decimals, say_percent(value), decimals, error);
 }
 
 static void budget_figure(const struct proposal *p, const struct budget *b)
@@ -168,6 +169,8 @@ void proposal_why_margins(const struct proposal *p)
     figure_margins_sorted(m, order);
     markdown_heading(p->to, 2, "Margins");
     sentences(p->to, &why);
+    if (m->count == 0 || figure_margins_room(&m->margin[order[m->count - 1]]) <= 0.0)
+        return; /* none has a margin */
     markdown_paragraph(p->to, "How far each condition may go, all others as planned, until the plan no longer resolves; "
                               "± is the Monte Carlo uncertainty. The least room comes first.");
     markdown_cell(&table, "Condition");

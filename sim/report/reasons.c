@@ -57,28 +57,25 @@ static void add(struct reasons *to, const char *format, ...)
     va_end(arguments);
 }
 
-/* Add to a list in words: ", " between, " and " before the last. */
-static void list(char *text, size_t size, const char *word, bool last)
+/* Add to a list in words. */
+static void list(char *text, size_t size, const char *word)
 {
     const size_t used = strlen(text);
-    snprintf(text + used, size - used, "%s%s", used == 0 ? "" : last ? " and " : ", ", word);
+    snprintf(text + used, size - used, "%s%s", used == 0 ? "" : ", ", word);
 }
 
 double reasons_share(const struct budget *b, enum reasons_repeat repeat, char names[REASONS_NAMES])
 {
     enum draws_group order[SOURCES];
     const size_t count = figure_budget_sorted(b, order);
-    size_t worth = 0, named = 0;
     double sum = 0.0;
     for (size_t i = 0; i < count; i++)
-        if (about[order[i]].repeat == repeat) {
+        if (about[order[i]].repeat == repeat)
             sum += b->group[order[i]].total;
-            worth += b->group[order[i]].total >= worth_a_word;
-        }
     names[0] = '\0';
     for (size_t i = 0; i < count; i++)
         if (about[order[i]].repeat == repeat && b->group[order[i]].total >= worth_a_word)
-            list(names, REASONS_NAMES, sources_name(order[i]), ++named == worth);
+            list(names, REASONS_NAMES, sources_name(order[i]));
     return sum > 0.0 ? sum : 0.0;
 }
 
@@ -100,6 +97,23 @@ double reasons_floor_sd(const struct budget *b)
     return fmin(sqrt(squares), b->outcome.at.sd);
 }
 
+struct reasons_sentence reasons_endless(const struct budget *b)
+{
+    static const double hardly = 0.95;
+    const double sd = b->outcome.at.sd, left = reasons_floor_sd(b);
+    struct reasons_sentence s;
+    if (left > hardly * sd)
+        snprintf(s.text, sizeof s.text,
+                 "Endless fillings and runs would hardly lower the standard deviation of %s points.",
+                 say_digits(say_percent(sd), 2).text);
+    else
+        snprintf(s.text, sizeof s.text,
+                 "With endless fillings and runs the standard deviation would fall from %s points to about %s, no "
+                 "further.",
+                 say_digits(say_percent(sd), 2).text, say_digits(say_percent(left), 2).text);
+    return s;
+}
+
 /* A share of the variance: "24.2 %". */
 static struct say share(double fraction)
 {
@@ -119,7 +133,7 @@ static void first(struct reasons *to, const struct budget *b)
         return;
     for (size_t i = 1; i < count && i < NAMED && b->group[order[i]].total >= worth_a_word; i++) {
         snprintf(word, sizeof word, "%s (%s)", sources_name(order[i]), share(b->group[order[i]].total).text);
-        list(others, sizeof others, word, i + 1 == NAMED);
+        list(others, sizeof others, word);
     }
     add(to, "What to improve first: %s, behind %s of the variance of the result; what helps is %s.%s%s%s",
         sources_name(order[0]), share(b->group[order[0]].total).text, about[order[0]].remedy,
@@ -140,8 +154,7 @@ static void floor_of(struct reasons *to, const struct budget *b)
         add(to, "Nearly all of the variance averages out over replicates.");
     if (*made)
         add(to, "What only further preparations average out: %s, %s of the variance.", made, share(preparation).text);
-    add(to, "With endless fillings and runs the standard deviation would fall from %s points to about %s, no further.",
-        say_digits(say_percent(b->outcome.at.sd), 2).text, say_digits(say_percent(reasons_floor_sd(b)), 2).text);
+    add(to, "%s", reasons_endless(b).text);
 }
 
 /* The greatest shifts of the mean. */
@@ -161,7 +174,7 @@ static void shifts(struct reasons *to, const struct budget *b)
         taken[most] = true;
         snprintf(word, sizeof word, "%s %+.3f points", budget_bias_name((enum budget_bias)most),
                  say_percent(b->bias[most].shift));
-        list(text, sizeof text, word, false);
+        list(text, sizeof text, word);
     }
     if (*text)
         add(to, "What shifts the mean most: %s.", text);
@@ -217,7 +230,7 @@ static void tightest(struct reasons *to, const struct margins *m)
             continue;
         snprintf(word, sizeof word, "%s %s %s (planned: %s)", c->name, c->up ? "above" : "below",
                  reasons_value(c->worst, c->unit).text, reasons_value(c->nominal, c->unit).text);
-        list(text, sizeof text, word, false);
+        list(text, sizeof text, word);
         count++;
     }
     if (*text)

@@ -29,6 +29,12 @@ double reasons_temperature_share(const struct budget *budget);
  * runs: what the sources that these do not average out cause alone. */
 double reasons_floor_sd(const struct budget *budget);
 
+/* The same as a sentence. */
+struct reasons_sentence {
+    char text[160];
+};
+struct reasons_sentence reasons_endless(const struct budget *budget);
+
 /* Add the sentences of a budget (at most six) and of the margins (at most
  * four). A budget that was not played adds none. */
 void reasons_budget(struct reasons *to, const struct budget *budget);
