@@ -91,7 +91,7 @@ static void reduction(const struct listener *to, const struct plan *p)
     item(to, "reduction", "%s%s, density %s, kinetic energy %s, %s chain statistics", line[a->extrapolation],
          single                         ? ""
          : a->weighting == WEIGHT_EQUAL ? ", equal weights"
-         : ", weights c squared",
+                                        : ", weights c squared",
          a->density_corrected ? "corrected" : "neglected", a->kinetic_corrected ? "corrected" : "neglected",
          a->chain_statistics == CHAIN_DISCRETE ? "discrete" : "continuous");
 }

@@ -40,10 +40,8 @@ static void compose(const struct proposal *p)
 static bool write_page(const struct report_context *context, const struct files_text *markdown,
                        struct files_failure *failure)
 {
-    const struct proposal_html page = {.markdown = markdown->bytes,
-                                       .size = markdown->size,
-                                       .title = title(context),
-                                       .folder = context->folder};
+    const struct proposal_html page = {
+        .markdown = markdown->bytes, .size = markdown->size, .title = title(context), .folder = context->folder};
     struct files_text html;
     if (!files_text_open(&html))
         return false;
@@ -59,7 +57,8 @@ bool proposal_write(const struct report_context *context, const struct report_pl
     const long index = resolves ? r->recommended : r->nearest_miss;
     struct plan plan;
     struct files_text text;
-    struct proposal p = {.context = context, .planned = planned, .warnings = warnings, .pen = pen, .resolves = resolves};
+    struct proposal p = {
+        .context = context, .planned = planned, .warnings = warnings, .pen = pen, .resolves = resolves};
     if (index != SEARCH_NONE) {
         scenario_plan(context->scenario, (size_t)index, &plan);
         p.plan = &plan;

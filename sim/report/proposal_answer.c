@@ -36,10 +36,9 @@ static void limits(const struct proposal *p)
 
 void proposal_answer_question(const struct proposal *p)
 {
-    static const char *const found[] = {
-        "found elsewhere, so that the uncertainty of K and a counts in full",
-        "found with the same K and a, whose uncertainty cancels and is left out",
-        "that of a second polymer of the same grade, which is measured alongside"};
+    static const char *const found[] = {"found elsewhere, so that the uncertainty of K and a counts in full",
+                                        "found with the same K and a, whose uncertainty cancels and is left out",
+                                        "that of a second polymer of the same grade, which is measured alongside"};
     const struct question *q = question(p);
     markdown_heading(p->to, 2, "The question");
     markdown_paragraph(p->to,

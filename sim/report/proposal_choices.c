@@ -19,9 +19,8 @@ struct say proposal_choices_more(const struct proposal *p, const struct outcome 
     const struct cost_rules *cost = scenario_cost(p->context->scenario);
     const struct outcome *best = &p->planned->search->candidates[p->planned->search->recommended].outcome;
     const bool hours = cost->least == LEAST_HOURS;
-    const double more = hours
-                            ? round(10.0 * say_hours(other->at.hours_s)) - round(10.0 * say_hours(best->at.hours_s))
-                            : round(other->at.money) - round(best->at.money);
+    const double more = hours ? round(10.0 * say_hours(other->at.hours_s)) - round(10.0 * say_hours(best->at.hours_s))
+                              : round(other->at.money) - round(best->at.money);
     struct say s = {"no more"};
     if (fabs(more) < 0.5)
         return s;

@@ -214,8 +214,8 @@ struct finishing {
     FILE *to;
     const char *contents;
     size_t headings;
-    bool body, row, head; /* in a table's body; before a row's first cell; in it */
-    bool cell;            /* in any cell */
+    bool body, row, head;  /* in a table's body; before a row's first cell; in it */
+    bool cell;             /* in any cell */
     size_t unbroken, most; /* letters since a line could last be broken; before it may be again */
 };
 

@@ -79,14 +79,16 @@ static double fall_per_kelvin(double T_K)
 static void bath(const struct plan *p, FILE *to)
 {
     const struct bath *b = &p->bath;
-    fprintf(to, " The study uses the bath %s at %s degC: fluctuation %s K (standard deviation, correlation time %s "
-                "min), drift %s K/h, %s K from day to day, %s K between places in it (standard uncertainties).",
+    fprintf(to,
+            " The study uses the bath %s at %s degC: fluctuation %s K (standard deviation, correlation time %s "
+            "min), drift %s K/h, %s K from day to day, %s K between places in it (standard uncertainties).",
             b->name, say_short(say_celsius(p->habits.temperature_K), 4).text, say_short(b->fluctuation_K, 3).text,
             say_short(say_minutes(b->correlation_time_s), 3).text, say_short(b->drift_u_K_s * 3600.0, 3).text,
             say_short(b->day_u_K, 3).text, say_short(b->gradient_u_K, 3).text);
     if (p->temperature_record)
-        fprintf(to, " The temperature is read in each run with the thermometer %s (calibration %s K, reading %s K), and "
-                    "each time is brought to the set temperature.",
+        fprintf(to,
+                " The temperature is read in each run with the thermometer %s (calibration %s K, reading %s K), and "
+                "each time is brought to the set temperature.",
                 p->thermometer.name, say_short(p->thermometer.calibration_u_K, 3).text,
                 say_short(p->thermometer.reading_u_K, 3).text);
     else
@@ -136,8 +138,9 @@ static void temperature(const struct proposal *p, FILE *to)
     const struct question *q = scenario_question(p->context->scenario);
     const struct budget *b = p->planned->budget;
     const double T_K = p->plan->habits.temperature_K;
-    fprintf(to, "Efflux times follow the viscosity of water, which falls by %s %% for each kelvin at %s degC (IAPWS "
-                "SR6-08)",
+    fprintf(to,
+            "Efflux times follow the viscosity of water, which falls by %s %% for each kelvin at %s degC (IAPWS "
+            "SR6-08)",
             say_digits(say_percent(fall_per_kelvin(T_K)), 3).text, say_short(say_celsius(T_K), 4).text);
     if (q->has_against)
         fprintf(to, ", and the fractions to be told apart, %s and %s head-to-head, are only %s points from each other",
@@ -173,7 +176,8 @@ static void fillings(const struct plan *plan, FILE *to)
     fputs(times(plan->fillings[INTACT]).text, to);
     if (plan->fillings[CLEAVED] != plan->fillings[INTACT])
         fprintf(to, " (cleaved: %s)", times(plan->fillings[CLEAVED]).text);
-    fprintf(to, ", with %s %s. ", say_plural(plan->runs, "run").text, tube ? "at each concentration" : "of each filling");
+    fprintf(to, ", with %s %s. ", say_plural(plan->runs, "run").text,
+            tube ? "at each concentration" : "of each filling");
 }
 
 static void numbers(const struct proposal *p, FILE *to)
@@ -229,8 +233,7 @@ static void replicates(const struct proposal *p, FILE *to)
 
 /* ---- both ---- */
 
-static void section(const struct proposal *p, const char *heading,
-                    void (*write)(const struct proposal *p, FILE *to))
+static void section(const struct proposal *p, const char *heading, void (*write)(const struct proposal *p, FILE *to))
 {
     struct files_text text;
     if (!files_text_open(&text))

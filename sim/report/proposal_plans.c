@@ -49,7 +49,7 @@ static double rank(const struct plans *t, size_t i)
     if (!t->p->resolves)
         return scenario_question(t->p->context->scenario)->has_against ? -o->at.power : -o->at.within;
     return scenario_cost(t->p->context->scenario)->least == LEAST_HOURS ? round(10.0 * say_hours(o->at.hours_s))
-                                                                         : round(o->at.money);
+                                                                        : round(o->at.money);
 }
 
 /* The `room` first by rank, then by index, out of those marked: a heap whose

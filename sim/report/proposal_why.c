@@ -138,12 +138,13 @@ void proposal_why_figure(const struct proposal *p)
 {
     if (!played_margins(p) || !figures_drawn(p->pen, "margins"))
         return;
-    markdown_figure(p->to, &(struct markdown_figure){
-                               "margins.svg",
-                               "Small panels, one for each of the conditions with the least room: how what the plan "
-                               "reaches falls as the condition gets worse. The table of margins has the numbers.",
-                               "How what the plan reaches falls with each condition, one at a time; the conditions with "
-                               "the least room, the tightest first."});
+    markdown_figure(p->to,
+                    &(struct markdown_figure){
+                        "margins.svg",
+                        "Small panels, one for each of the conditions with the least room: how what the plan "
+                        "reaches falls as the condition gets worse. The table of margins has the numbers.",
+                        "How what the plan reaches falls with each condition, one at a time; the conditions with "
+                        "the least room, the tightest first."});
 }
 
 static void condition(struct markdown_table *table, const struct margin *m)
@@ -171,8 +172,9 @@ void proposal_why_margins(const struct proposal *p)
     sentences(p->to, &why);
     if (m->count == 0 || figure_margins_room(&m->margin[order[m->count - 1]]) <= 0.0)
         return; /* none has a margin */
-    markdown_paragraph(p->to, "How far each condition may go, all others as planned, until the plan no longer resolves; "
-                              "± is the Monte Carlo uncertainty. The least room comes first.");
+    markdown_paragraph(p->to,
+                       "How far each condition may go, all others as planned, until the plan no longer resolves; "
+                       "± is the Monte Carlo uncertainty. The least room comes first.");
     markdown_cell(&table, "Condition");
     markdown_cell(&table, "Planned");
     markdown_cell(&table, "It still resolves");

@@ -147,13 +147,14 @@ static void floor_of(struct reasons *to, const struct budget *b)
     const double study = reasons_share(b, REASONS_STUDY, names);
     const double preparation = reasons_share(b, REASONS_PREPARATION, made);
     if (*names)
-        add(to, "What no number of replicates can buy: %s, %s of the variance, stay as they are in every run, filling "
-                "and preparation of the study.",
+        add(to,
+            "What no number of replicates can buy: %s (%s of the variance), which stay as they are in every run, "
+            "filling and preparation of the study.",
             names, share(study).text);
     else
         add(to, "Nearly all of the variance averages out over replicates.");
     if (*made)
-        add(to, "What only further preparations average out: %s, %s of the variance.", made, share(preparation).text);
+        add(to, "What only further preparations average out: %s (%s of the variance).", made, share(preparation).text);
     add(to, "%s", reasons_endless(b).text);
 }
 
@@ -191,8 +192,9 @@ static void claimed(struct reasons *to, const struct budget *b)
         return;
     const double off = b->coverage - level, error = 2.0 * b->coverage_se;
     const bool right = fabs(off) <= (error > near ? error : near);
-    add(to, "The 95 %% interval that an analyst claims from one notebook holds the truth in %s %% of studies (Monte "
-            "Carlo error %s): %s",
+    add(to,
+        "The 95 %% interval that an analyst claims from one notebook holds the truth in %s %% of studies (Monte "
+        "Carlo error %s): %s",
         say_by_error(say_percent(b->coverage), say_percent(b->coverage_se)).text,
         say_digits(say_percent(b->coverage_se), 2).text,
         right       ? "the usual error bar is as long as it should be."

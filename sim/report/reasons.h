@@ -31,7 +31,7 @@ double reasons_floor_sd(const struct budget *budget);
 
 /* The same as a sentence. */
 struct reasons_sentence {
-    char text[160];
+    char text[256];
 };
 struct reasons_sentence reasons_endless(const struct budget *budget);
 

@@ -19,7 +19,7 @@ int report_files_failed(const struct report_context *context, const struct files
 }
 
 bool report_files_scenario(const struct report_context *context, const char *name, size_t index,
-                          struct files_failure *failure)
+                           struct files_failure *failure)
 {
     char *yaml = scenario_resolved_yaml(context->scenario, index);
     char *path = yaml ? files_path(context->folder, name) : NULL;
@@ -30,7 +30,7 @@ bool report_files_scenario(const struct report_context *context, const char *nam
 }
 
 bool report_files_json(const struct report_context *context, const char *name, json_t *object,
-                      struct files_failure *failure)
+                       struct files_failure *failure)
 {
     struct files_text text;
     if (!object || !files_text_open(&text))

@@ -5,10 +5,10 @@
 #include "sim/report/html.h"
 
 /* The elements that gnuplot draws with. */
-static const char *const known[] = {"svg",   "g",        "defs",   "path",        "rect",  "circle",
-                                    "use",   "polygon",  "text",   "tspan",       "title", "desc",
-                                    "filter",   "feFlood", "feComposite", "pattern", "linearGradient",
-                                    "stop",  "clipPath", "line",   "polyline",    "ellipse"};
+static const char *const known[] = {"svg",      "g",       "defs",        "path",    "rect",           "circle",
+                                    "use",      "polygon", "text",        "tspan",   "title",          "desc",
+                                    "filter",   "feFlood", "feComposite", "pattern", "linearGradient", "stop",
+                                    "clipPath", "line",    "polyline",    "ellipse"};
 
 static bool among(const char *name, size_t length)
 {

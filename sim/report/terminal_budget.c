@@ -44,7 +44,8 @@ static void shares(const struct page *page, const struct budget *b)
         share(page, g->total, g->total_se);
         fprintf(page->to, "  %16s\n", say_digits(say_percent(g->alone_sd), 3).text);
     }
-    page_say(page, PAGE_PLAIN, "(In total: with all it takes part in. Alone: the standard deviation that it causes "
+    page_say(page, PAGE_PLAIN,
+             "(In total: with all it takes part in. Alone: the standard deviation that it causes "
              "when every other spread is zero.)");
     if (b->left_out > 0.0)
         page_say(page, PAGE_PLAIN, "At most %s of the pairs gave no answer and are left out.",
@@ -58,7 +59,8 @@ static void shifts(const struct page *page, const struct budget *b)
     for (int i = 0; i < BUDGET_BIASES; i++) {
         const double shift = say_percent(b->bias[i].shift), se = say_percent(b->bias[i].se);
         if (isfinite(shift))
-            fprintf(page->to, "  %-34s %+.4f +- %.4f\n", budget_bias_name((enum budget_bias)i), shift, se);
+            fprintf(page->to, se >= 0.00005 ? "  %-36s %+.4f +- %.4f\n" : "  %-36s %+.4f\n",
+                    budget_bias_name((enum budget_bias)i), shift, se);
     }
 }
 

@@ -77,11 +77,14 @@ void record_fill(const struct reading *r, struct record *record, const struct re
     const size_t count = keys_count(record->section);
     for (size_t i = 0; i < count; i++) {
         const struct keys_row *row = keys_row(record->section, i);
-        if (record->values[i].state != VALUE_ABSENT)
-            continue;
         const struct value *taken = parent ? record_by_row(parent, row) : NULL;
-        record->values[i] = taken && taken->state != VALUE_ABSENT ? *taken : value_default(r, row);
-        record->values[i].own = false;
+        const struct value otherwise = taken && taken->state != VALUE_ABSENT ? *taken : value_default(r, row);
+        struct value *here = &record->values[i];
+        if (here->state == VALUE_ABSENT) {
+            *here = otherwise;
+            here->own = false;
+        } else if (here->text && otherwise.text && strcmp(here->text, otherwise.text) == 0)
+            here->source = otherwise.source; /* given, but what it would be anyway */
     }
     record->filled = true;
 }

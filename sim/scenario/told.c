@@ -22,7 +22,7 @@ static void tell_value(const struct listener *to, const struct keys_row *row, co
     told.key = row->key;
     told.text = v->text;
     told.help = row->help;
-    told.source = given ? NULL : v->source ? v->source : row->source;
+    told.source = v->source ? v->source : given ? NULL : row->source;
     to->tell(to->context, &told);
 }
 

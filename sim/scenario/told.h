@@ -6,10 +6,11 @@
 #include "sim/scenario/scenario.h"
 
 struct told {
-    const char *section; /* "polymer", "cleavage", "solutions", "bench", "grade", "tube", "bath", "thermometer", "timer" */
-    const char *entry;   /* name of the entry of the kit, else "" */
+    const char
+        *section; /* "polymer", "cleavage", "solutions", "bench", "grade", "tube", "bath", "thermometer", "timer" */
+    const char *entry; /* name of the entry of the kit, else "" */
     const char *key, *text, *help;
-    const char *source;  /* NULL: given in the scenario or on the command line */
+    const char *source; /* NULL: given in the scenario or on the command line */
 };
 
 /* Calls `tell` for each, section by section. What has no value is left out. */

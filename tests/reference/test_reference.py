@@ -13,7 +13,7 @@ import sys
 import iapws
 import numpy as np
 from iapws._iapws import _Liquid, _Viscosity
-from scipy import optimize, special
+from scipy import optimize, special, stats
 
 FOLDER = pathlib.Path(__file__).parent
 REASONS = ("TABLE", "ROUND", "SERIES", "STAT", "TEXT")
@@ -318,6 +318,45 @@ def acetate(quantity, h):
     return 100 * (discrete(85000 / assumed, after / assumed) / 0.015 - 1)
 
 
+# ---- chains of other starts, cut at independent linkages ----
+
+def start(name, xn):
+    """A number distribution on whole lengths whose number average is xn."""
+    if name == "geometric":
+        return most_probable(xn)
+    if name == "one-length":
+        x = np.arange(1, xn + 1.0)
+        return x, np.where(x == xn, 1.0, 0.0)
+    x = np.arange(1, 40 * xn + 1.0)  # Schulz-Zimm, Mw/Mn 1.5: k = 2
+
+    def at(theta):
+        n = x * np.exp(-2 * x / theta)
+        return n / n.sum()
+    return x, at(optimize.brentq(lambda theta: (x * at(theta)).sum() - xn, 0.9 * xn, 1.1 * xn, xtol=1e-10))
+
+
+def cut_start(name, xn, p):
+    x, P = start(name, xn)
+    longer = np.cumsum(P[::-1])[::-1] - P
+    beyond = np.cumsum(longer[::-1])[::-1] - longer
+    return x, (1 - p) ** (x - 1) * (P + 2 * p * longer + p * p * beyond)
+
+
+@computes("scission.Mn", "scission.Mw", "scission.Mv", "scission.usual")
+def scission(quantity, name, xn, p):
+    xn, p = int(xn), float(p)
+    Mn, Mw, Mv = (44.05 * x for x in averages(*cut_start(name, xn, p), 0.76))
+    if quantity == "scission.usual":
+        return 100 * (usual(0.76, Mv / 44.05, averages(*start(name, xn), 0.76)[2]) / p - 1)
+    return {"scission.Mn": Mn, "scission.Mw": Mw, "scission.Mv": Mv}[quantity]
+
+
+@computes("schulz-zimm.r")
+def schulz_zimm_r(quantity, k, a):
+    k, a = float(k), float(a)
+    return (special.gamma(k + 1 + a) / special.gamma(k + 1)) ** (1 / a) / k
+
+
 # ---- bath and liquid ----
 
 @computes("bath.mean", "bath.middle", "bath.ends", "bath.liquid", "bath.middle.liquid")
@@ -463,6 +502,48 @@ def series_effect(quantity, amount):
     if quantity == "effect.density.eta":
         return true[1] - found[1]
     return 100 * (delta_of(2e-4, 0.76, *found) / delta_of(2e-4, 0.76, *true) - 1)
+
+
+# ---- error bars of an intercept ----
+
+def weighted(A, y, weight):
+    """Coefficients, standard errors and degrees of freedom of weighted least squares, the variance from the residuals."""
+    normal = np.linalg.inv(A.T @ (weight[:, None] * A))
+    b = normal @ (A.T @ (weight * y))
+    freedom = len(y) - A.shape[1]
+    return b, np.sqrt((weight * (y - A @ b) ** 2).sum() / freedom * np.diag(normal)), freedom
+
+
+def error_bar(c, relative, extrapolation, weight):
+    reduced, inherent = (relative - 1) / c, np.log(relative) / c
+    A = np.stack([np.ones_like(c), c], 1)
+    if extrapolation == "single-point":
+        value = np.sqrt(2 * (relative - 1 - np.log(relative))) / c
+        return value.std(ddof=1) / math.sqrt(len(c)), len(c) - 1
+    if extrapolation == "common-intercept":
+        zero, one = np.zeros_like(c), np.ones_like(c)
+        A = np.concatenate([np.stack([one, c, zero], 1), np.stack([one, zero, c], 1)])
+        _, u, freedom = weighted(A, np.concatenate([reduced, inherent]), np.concatenate([weight, weight]))
+        return u[0], freedom
+    b, u, freedom = weighted(A, {"huggins": reduced, "kraemer": inherent, "martin": np.log(reduced)}[extrapolation], weight)
+    return (math.exp(b[0]) * u[0] if extrapolation == "martin" else u[0]), freedom
+
+
+@computes("claim.u", "claim.freedom")
+def claim(quantity, which, extrapolation, weighting):
+    if which == "h3":
+        t, b = points("line", "h3.point")
+        c, relative = t - 20, 1 + (t - 20) * b
+    else:
+        c, relative = points("reduction", f"{which}.point")
+    weight = c**2 if weighting == "c-squared" else np.ones_like(c)
+    return error_bar(c, relative, extrapolation, weight)[quantity == "claim.freedom"]
+
+
+@computes("claim.half")
+def claim_half(quantity, u, freedom):
+    """Half-width of the 95 % interval: t u."""
+    return stats.t.ppf(0.975, float(freedom)) * float(u)
 
 
 # ---- a whole notebook ----

@@ -58,8 +58,8 @@ RUNS = [
     ("plan", CHOICE, 0), ("plan", HOPELESS, 3), ("plan", WITHIN, None), ("plan", IMPOSSIBLE, 3), ("plan", DEAR, 3),
     ("sheet", ONE, 0), ("sheet", BOTH, 0), ("sheet", WITHIN, 0), ("sheet", MEASURED, 0), ("sheet", IN_TUBE, 0),
     ("sheet", SHARED, 0), ("sheet", IMPOSSIBLE, 3),
-    # ("budget", ONE, 0), ("budget", WITHIN, None), ("budget", IMPOSSIBLE, 3),
-    # ("margin", ONE, None), ("margin", BOTH, None), ("margin", IMPOSSIBLE, 3),
+    ("budget", ONE, 0), ("budget", WITHIN, None), ("budget", IMPOSSIBLE, 3),
+    ("margin", ONE, None), ("margin", BOTH, None), ("margin", IMPOSSIBLE, 3),
 ]
 FILED = {"plan", "trial", "budget", "margin"}  # the same object stands in VERB.json
 

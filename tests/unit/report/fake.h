@@ -11,6 +11,7 @@
 #include "sim/judge/search.h"
 #include "sim/judge/trial.h"
 #include "sim/scenario/scenario.h"
+#include "sim/scenario/told.h"
 
 enum { FAKE_KEYS = 5, FAKE_PLANS = 24 };
 
@@ -134,6 +135,15 @@ long search_choice(const struct scenario *s, const struct search_result *r, size
 {
     (void)s;
     return r->by_choice[key * 4 + option];
+}
+
+void told_plan(const struct scenario *s, size_t index, void (*tell)(void *context, const struct told *value),
+               void *context)
+{
+    (void)s;
+    (void)index;
+    tell(context, &(struct told){"polymer", "pvoh|water", "a", "0.76", "the exponent", "from memory"});
+    tell(context, &(struct told){"bench", "", "tilt_u", "0.5 degree", "of the tube", NULL});
 }
 
 __attribute__((unused)) static struct scenario fake_scenario(void)

@@ -21,6 +21,7 @@ static const char *const files[] = {"candidates.csv",    "cost.csv",
                                     "estimates.svg",     "extrapolation.csv",
                                     "extrapolation.pdf", "extrapolation.svg",
                                     "plan.json",         "recommended.yaml",
+                                    "report.html",       "report.md",
                                     "run.log",           "scenario.resolved.yaml",
                                     "trial.json",        "share.csv",
                                     "share.svg",         "share.pdf"};
