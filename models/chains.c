@@ -14,18 +14,24 @@ struct sums {
     double *p, *q, *r; /* x^(1+a) P, 2 x^(1+a) Q, x^(1+a) R */
 };
 
-/* The density at N, not normalised; theta is the location. */
+/* The density, not normalised; theta is the location. */
 struct density {
     enum chains_kind kind;
-    double k, variance, theta;
+    double k, variance, theta, ln_theta;
 };
 
-static double density_at(const struct density *d, double N)
+/* At N, whose logarithm is given too. */
+static double density_at(const struct density *d, double N, double ln_N)
 {
-    const double x = N / d->theta;
-    if (d->kind == CHAINS_SCHULZ_ZIMM) return exp((d->k - 1.0) * log(x) - d->k * (x - 1.0)); /* near 1 at its top */
-    const double z = log(x);
+    const double z = ln_N - d->ln_theta;
+    if (d->kind == CHAINS_SCHULZ_ZIMM) return exp((d->k - 1.0) * z - d->k * (N / d->theta - 1.0)); /* near 1 at its top */
     return exp(-0.5 * z * z / d->variance) / N;
+}
+
+static void move_to(struct density *d, double theta)
+{
+    d->theta = theta;
+    d->ln_theta = log(theta);
 }
 
 /* Beyond this N less than 1e-12 of the moment N^m is left: eight standard
@@ -43,10 +49,10 @@ static void moments(const struct density *d, double m, double out[3])
     const size_t last = (size_t)ceil(furthest(d, m));
     out[0] = out[1] = out[2] = 0.0;
     for (size_t N = 1; N <= last; N++) {
-        const double x = (double)N, p = density_at(d, x);
+        const double x = (double)N, ln_x = log(x), p = density_at(d, x, ln_x);
         out[0] += p;
         out[1] += p * x;
-        out[2] += p * x * (m == 2.0 ? x : exp((m - 1.0) * log(x)));
+        out[2] += p * x * (m == 2.0 ? x : m == 1.0 ? 1.0 : exp((m - 1.0) * ln_x));
     }
 }
 
@@ -74,15 +80,15 @@ static double continuous_average(const struct density *d, enum polymer_average a
 static void locate(struct density *d, const struct chains_shape *shape, double a)
 {
     double before = 0.0, gap_before = 0.0;
-    d->theta = shape->units / continuous_average(d, shape->average, a);
+    move_to(d, shape->units / continuous_average(d, shape->average, a));
     for (int i = 0; i < 30; i++) {
         const double gap = average_of(d, shape->average, a) / shape->units - 1.0, now = d->theta;
         if (fabs(gap) < 1e-13) return;
         const double slope = i == 0 || gap == gap_before ? 1.0 / now : (gap - gap_before) / (now - before);
         before = now;
         gap_before = gap;
-        d->theta = now - gap / slope;
-        if (fabs(d->theta - now) < 1e-14 * now) return;
+        move_to(d, now - gap / slope);
+        if (fabs(gap) < 1e-7) return; /* what is left is of the square of that */
     }
 }
 
@@ -193,7 +199,7 @@ static bool from_density(struct chains *c, struct chains_shape shape, double a)
     locate(&d, &shape, a);
     const size_t last = (size_t)ceil(furthest(&d, shape.average == AVERAGE_WEIGHT ? 2.0 : 1.0 + a));
     if (!make_room(&s, last)) return false;
-    for (size_t i = 0; i < last; i++) s.p[i] = density_at(&d, (double)(i + 1));
+    for (size_t i = 0; i < last; i++) s.p[i] = density_at(&d, (double)(i + 1), log((double)(i + 1)));
     keep(c, &s, a);
     return true;
 }

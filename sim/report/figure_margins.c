@@ -61,7 +61,8 @@ static void row(FILE *to, size_t panel, const struct margin *m, const char *what
 {
     fprintf(to, "%zu,", panel);
     candidates_csv_field(to, m->key);
-    fprintf(to, ",%s,%s,%s\n", what, say_number(values[0]).text, say_digits(say_percent(values[1]), 6).text);
+    fprintf(to, ",%s,%s,%s\n", what, say_number(values[0]).text,
+            isfinite(values[1]) ? say_digits(say_percent(values[1]), 6).text : "");
 }
 
 /* One direction of one condition; panel 0 is not drawn. */

@@ -101,18 +101,25 @@ static void worded(cmark_node *image)
     cmark_node_free(image);
 }
 
+static void word_images(cmark_node *node)
+{
+    for (cmark_node *child = cmark_node_first_child(node), *next; child; child = next) {
+        next = cmark_node_next(child);
+        if (cmark_node_get_type(child) == CMARK_NODE_IMAGE)
+            worded(child);
+        else
+            word_images(child);
+    }
+}
+
 /* An image alone, with the caption below it, becomes a figure. Gives back the
  * last node it stands in. */
 static cmark_node *figure(cmark_node *paragraph, const char *folder)
 {
     cmark_node *image = only(paragraph, CMARK_NODE_IMAGE), *caption = cmark_node_next(paragraph);
     struct files_text svg;
-    if (!image)
+    if (!image || !drawn(image, folder, &svg))
         return paragraph;
-    if (!drawn(image, folder, &svg)) {
-        worded(image);
-        return paragraph;
-    }
     cmark_node *block = cmark_node_new(CMARK_NODE_CUSTOM_BLOCK);
     cmark_node_set_on_enter(block, svg.bytes);
     cmark_node_set_on_exit(block, "</figure>");
@@ -334,6 +341,7 @@ bool proposal_html_print(FILE *to, const struct proposal_html *page)
         return false;
     cmark_node *document = parse(page);
     rework(document, page->folder, contents.stream);
+    word_images(document);
     char *html = cmark_render_html(document, CMARK_OPT_DEFAULT, NULL);
     cmark_node_free(document);
     const bool good = files_text_close(&contents) && html;

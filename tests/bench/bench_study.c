@@ -104,7 +104,7 @@ int main(int argc, char **argv)
     complain_print(complaints, stderr);
     if (!s) return 1;
     scenario_plan(s, 0, &plan);
-    if (!design_make(&design, &plan, scenario_cost(s), scenario_question(s)->expect)) return 1;
+    if (!design_make(&design, &plan, scenario_cost(s), scenario_question(s))) return 1;
     const struct study_job one = {.design = &design, .seed = 1, .fractions = 1, .fraction = {0.015}, .analyses = 1, .analysis = &plan.analysis};
     struct study_job pair = one;
     pair.fractions = 2;

@@ -515,8 +515,11 @@ def weighted(A, y, weight):
 
 
 def error_bar(c, relative, extrapolation, weight):
-    reduced, inherent = (relative - 1) / c, np.log(relative) / c
-    A = np.stack([np.ones_like(c), c], 1)
+    reduced, A = (relative - 1) / c, np.stack([np.ones_like(c), c], 1)
+    if extrapolation == "huggins":
+        _, u, freedom = weighted(A, reduced, weight)
+        return u[0], freedom
+    inherent = np.log(relative) / c
     if extrapolation == "single-point":
         value = np.sqrt(2 * (relative - 1 - np.log(relative))) / c
         return value.std(ddof=1) / math.sqrt(len(c)), len(c) - 1
@@ -525,7 +528,7 @@ def error_bar(c, relative, extrapolation, weight):
         A = np.concatenate([np.stack([one, c, zero], 1), np.stack([one, zero, c], 1)])
         _, u, freedom = weighted(A, np.concatenate([reduced, inherent]), np.concatenate([weight, weight]))
         return u[0], freedom
-    b, u, freedom = weighted(A, {"huggins": reduced, "kraemer": inherent, "martin": np.log(reduced)}[extrapolation], weight)
+    b, u, freedom = weighted(A, inherent if extrapolation == "kraemer" else np.log(reduced), weight)
     return (math.exp(b[0]) * u[0] if extrapolation == "martin" else u[0]), freedom
 
 

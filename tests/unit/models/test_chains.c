@@ -276,7 +276,7 @@ static double hold_pieces(struct chains_shape shape, double a, double bound)
     return worst;
 }
 
-/* Worst seen of the tables: 1.2e-11 (log-normal, dispersity 2, xn 2000, d 7e-7);
+/* Worst seen of the tables: 1e-11 (log-normal, dispersity 2, xn 2000);
  * of the sums of most-probable chains 3e-15. */
 static void pieces_of_every_length(void **state)
 {
@@ -290,7 +290,7 @@ static void pieces_of_every_length(void **state)
 }
 
 /* The widest that a scenario may ask for: its tail bends F where next to
- * nothing is cut. */
+ * nothing is cut. Worst seen of all: 7.8e-11 (xn 60, a 0.9). */
 static void widest_log_normal(void **state)
 {
     (void)state;

@@ -73,7 +73,7 @@ static char *read_file(const struct run *r, const char *name)
     return text;
 }
 
-static void write(struct run *r)
+static void report(struct run *r)
 {
     struct files_failure failure;
     const struct report_context context = {.scenario = &r->scenario, .version = "0.1", .folder = r->folder};
@@ -132,7 +132,7 @@ static void sections_in_order(void **state)
                                            "## All plans\n",
                                            NULL};
     struct run *r = *state;
-    write(r);
+    report(r);
     assert_order(r->markdown, sections);
     assert_plain_words(r->markdown);
     assert_said(r->markdown, "`vicinal plan made-up.yaml --seed 7`");
@@ -149,7 +149,7 @@ static void sections_in_order(void **state)
 static void the_answer(void **state)
 {
     struct run *r = *state;
-    write(r);
+    report(r);
     /* a number keeps to its unit by a blank that does not break */
     assert_said(r->markdown, "**It resolves: the plan below tells 1.5\xC2\xA0% head-to-head apart from 1.3\xC2\xA0%");
     assert_said(r->markdown, "a power of 93.21\xC2\xA0% (Monte Carlo error 0.27; asked: 90\xC2\xA0%)");
@@ -160,15 +160,15 @@ static void the_answer(void **state)
     assert_said(r->markdown, "| bath: circulator | 17.2 | 2 | recommended |");
     assert_said(r->markdown, "stock in a 100 mL flask");
     assert_said(r->markdown, "Nothing that was weighed resolves with bath beaker.");
-    assert_said(r->markdown, "bath fluctuation up to 0.05 K (planned: 0.02 K)");
-    assert_said(r->markdown, "Nothing that was weighed resolves with fillings 1 or fillings 2.");
+    assert_said(r->markdown, "bath fluctuation up to 0.05\xC2\xA0K (planned: 0.02\xC2\xA0K)");
+    assert_said(r->markdown, "Nothing that was weighed resolves with fillings 1\xC2\xA0or fillings 2.");
 }
 
 static void nothing_resolves(void **state)
 {
     struct run *r = *state;
     fake_missed(&r->scenario, &r->search);
-    write(r);
+    report(r);
     assert_order(r->markdown, (const char *const[]){"## The answer", "Nothing resolves", "The nearest miss",
                                                     "The constants are the limit", "### Ways out", "same-constants",
                                                     "## The nearest miss", "## Grade and glass", "## Error budget",
@@ -182,7 +182,7 @@ static void nothing_resolves(void **state)
     r->search.result.nearest_miss = SEARCH_NONE;
     r->planned.budget = NULL;
     r->planned.margins = NULL;
-    write(r);
+    report(r);
     assert_said(r->markdown, "* 24\xC2\xA0plans: impossible: the \\| day is too short");
     assert_null(strstr(r->markdown, "## The nearest miss"));
     assert_plain_words(r->markdown);
@@ -199,7 +199,7 @@ static void nothing_typed_is_more_than_text(void **state)
     r->scenario.cost.currency = "<i>|";
     r->search.result.fresh.at.money = 12.0;
     r->warnings = (struct warnings){.count = 1, .text = warning};
-    write(r);
+    report(r);
     assert_said(r->markdown, "# \\<script\\>alert(1)\\</script\\> \\& \\&amp; \\# \\*a\\* \\| \\`b\\`  \\#\\# \\[l\\]");
     assert_said(r->html, "<h1>&lt;script&gt;alert(1)&lt;/script&gt; &amp; &amp;amp; # *a* | `b`  ## [l](javascript:x) "
                          "![i](http://h/i.png)</h1>");

@@ -15,16 +15,11 @@
 #include "sim/report/report.h"
 #include "tests/unit/report/fake.h"
 
-static const char *const files[] = {"candidates.csv",    "cost.csv",
-                                    "cost.pdf",          "cost.svg",
-                                    "estimates.csv",     "estimates.pdf",
-                                    "estimates.svg",     "extrapolation.csv",
-                                    "extrapolation.pdf", "extrapolation.svg",
-                                    "plan.json",         "recommended.yaml",
-                                    "report.html",       "report.md",
-                                    "run.log",           "scenario.resolved.yaml",
-                                    "trial.json",        "share.csv",
-                                    "share.svg",         "share.pdf"};
+static const char *const files[] = {
+    "candidates.csv", "cost.csv", "cost.pdf", "cost.svg", "estimates.csv", "estimates.pdf", "estimates.svg",
+    "extrapolation.csv", "extrapolation.pdf", "extrapolation.svg", "plan.json", "recommended.yaml",
+    "report.html", "report.md", "run.log", "scenario.resolved.yaml", "trial.json", "share.csv", "share.svg",
+    "share.pdf"};
 enum { FILES = sizeof files / sizeof *files };
 
 /* One run of a report and what it said. */
