@@ -2,12 +2,14 @@
 # line. Reads: index, status, cost, reached, studies.
 set xlabel cost_label
 set ylabel reach_label
+stats input using 3 name "cost" nooutput
 stats input using 4 nooutput
 lowest = STATS_min < bar ? STATS_min : bar - 1
 bottom = lowest < 0 ? 0 : 20 * floor(lowest / 20)
 room = 0.03 * (100 - bottom)
 set yrange [bottom - room:100 + room]
 set ytics bottom, bottom < 60 ? 20 : 5, 100
+if (cost_max - cost_min < 0.02 * cost_max) { set xrange [0.95 * cost_min:1.05 * cost_max] }
 set offsets graph 0.04, graph 0.04, 0, 0
 
 set arrow 1 from graph 0, first bar to graph 1, first bar nohead front linecolor rgb black linewidth 1.5 dashtype 2

@@ -124,8 +124,11 @@ static void resolved(const struct proposal *p)
     proposal_answer_reached(p, reached, sizeof reached);
     takes(p, cost, sizeof cost);
     markdown_strong(p->to, "It resolves: the plan below %s, with %s.", asked ? asked : "", reached);
-    markdown_paragraph(p->to, "It takes %s, and is the cheapest of %s that resolve among %s weighed.", cost,
-                       say_count(r->counts[STATUS_RESOLVES]).text, say_plural(r->count, "plan").text);
+    if (r->count == 1)
+        markdown_paragraph(p->to, "It takes %s.", cost);
+    else
+        markdown_paragraph(p->to, "It takes %s, and is the cheapest of the %s that resolve, among %s weighed.", cost,
+                           say_count(r->counts[STATUS_RESOLVES]).text, say_plural(r->count, "plan").text);
     decide(p);
     free(asked);
 }

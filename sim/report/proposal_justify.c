@@ -203,18 +203,24 @@ static void numbers(const struct proposal *p, FILE *to)
 
 static void averaged(const struct budget *b, FILE *to)
 {
-    char run[REASONS_NAMES], filling[REASONS_NAMES], study[REASONS_NAMES], made[REASONS_NAMES];
-    const double runs = reasons_share(b, REASONS_RUN, run), fillings = reasons_share(b, REASONS_FILLING, filling);
-    const double fixed = reasons_share(b, REASONS_STUDY, study), of_made = reasons_share(b, REASONS_PREPARATION, made);
-    if (*run)
-        fprintf(to, " What further runs average out (%s) is behind %.1f %% of the variance of the result.", run,
-                say_percent(runs));
-    if (*filling)
-        fprintf(to, " What further fillings average out (%s) is behind %.1f %%.", filling, say_percent(fillings));
-    if (*made)
-        fprintf(to, " What only further preparations average out (%s) is behind %.1f %%.", made, say_percent(of_made));
-    if (*study)
-        fprintf(to, " What no number of replicates averages out (%s) is behind %.1f %%.", study, say_percent(fixed));
+    static const struct {
+        enum reasons_repeat repeat;
+        const char *what;
+    } by[] = {{REASONS_RUN, "What further runs average out"},
+              {REASONS_FILLING, "What further fillings average out"},
+              {REASONS_DAY, "What further days average out"},
+              {REASONS_PREPARATION, "What only further preparations average out"},
+              {REASONS_STUDY, "What no number of replicates averages out"}};
+    char names[REASONS_NAMES];
+    bool any = false;
+    for (size_t i = 0; i < sizeof by / sizeof *by; i++) {
+        const double share = reasons_share(b, by[i].repeat, names);
+        if (!*names)
+            continue;
+        fprintf(to, " %s (%s) is behind %.1f %%%s.", by[i].what, names, say_percent(share),
+                any ? "" : " of the variance of the result");
+        any = true;
+    }
     fprintf(to, " %s", reasons_endless(b).text);
 }
 

@@ -52,6 +52,8 @@ static void heading(struct assumptions *a, const struct told *v)
 static void tell(void *context, const struct told *v)
 {
     struct assumptions *a = context;
+    if (strncmp(v->key, "price", strlen("price")) == 0 && strcmp(v->text, "0") == 0)
+        return; /* none was given */
     if (!a->any || strcmp(a->section, v->section) != 0)
         heading(a, v);
     markdown_cell_open(&a->table);
@@ -142,8 +144,8 @@ void proposal_rest_reproduce(const struct proposal *p)
     markdown_heading(p->to, 2, "How to reproduce it");
     markdown_paragraph(p->to,
                        "Version %s of vicinal, seed %llu, at most %zu simulated studies for each plan. The scenario "
-                       "with every default written out lies beside this report as scenario.resolved.yaml; the same "
-                       "scenario gives the same numbers for any number of threads.",
+                       "with every default, and with what the command line changed, lies beside this report as "
+                       "scenario.resolved.yaml; the same scenario gives the same numbers for any number of threads.",
                        p->context->version, (unsigned long long)scenario_seed(s), scenario_studies(s));
     if (!files_text_open(&name))
         return;
@@ -152,7 +154,8 @@ void proposal_rest_reproduce(const struct proposal *p)
     if (good) {
         fputs("vicinal plan ", command.stream);
         run_log_argument(command.stream, name.bytes);
-        fprintf(command.stream, " --seed %llu", (unsigned long long)scenario_seed(s));
+        fprintf(command.stream, " --seed %llu --studies %zu", (unsigned long long)scenario_seed(s),
+                scenario_studies(s));
         good = files_text_close(&command);
         if (good)
             markdown_code(p->to, command.bytes);

@@ -135,7 +135,7 @@ static void sections_in_order(void **state)
     report(r);
     assert_order(r->markdown, sections);
     assert_plain_words(r->markdown);
-    assert_said(r->markdown, "`vicinal plan made-up.yaml --seed 7`");
+    assert_said(r->markdown, "`vicinal plan made-up.yaml --seed 7 --studies 20000`");
     assert_said(r->markdown, "| `tilt_u` of the tube | 0.5 degree | given in the scenario |");
     assert_said(r->markdown, "IAPWS SR6-08");
     assert_said(r->markdown, "oxidiser");
