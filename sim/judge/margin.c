@@ -109,8 +109,9 @@ static bool close_in(const struct following *f, double good, double bad, const d
 {
     double at_good = margins[0], at_bad = margins[1];
     const double tolerance = 0.01;
-    for (int i = 0; i < 8 && fabs(bad - good) > tolerance * fmax(fabs(good), fabs(bad)); i++) {
-        double part = at_good / (at_good - at_bad), margin;
+    for (int i = 0; i < 14 && fabs(bad - good) > tolerance * fmax(fabs(good), fabs(bad)); i++) {
+        /* a straight line says nothing of where it fails altogether */
+        double part = at_bad < -30.0 ? 0.5 : at_good / (at_good - at_bad), margin;
         part = fmin(fmax(part, 0.15), 0.85);
         const double middle = good + part * (bad - good);
         if (!look(f, middle, &margin)) return false;

@@ -83,7 +83,7 @@ void record_fill(const struct reading *r, struct record *record, const struct re
         if (here->state == VALUE_ABSENT) {
             *here = otherwise;
             here->own = false;
-        } else if (here->text && otherwise.text && strcmp(here->text, otherwise.text) == 0)
+        } else if (!here->source && here->text && otherwise.text && strcmp(here->text, otherwise.text) == 0)
             here->source = otherwise.source; /* given, but what it would be anyway */
     }
     record->filled = true;

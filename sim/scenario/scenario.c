@@ -71,6 +71,8 @@ static void scenario_fill(const struct reading *r, struct scenario *s)
         *like = value_default(r, keys_bench_like);
     kit_resolve(r, &s->kit, KEYS_BENCHES, like);
     const struct choice *material = choices_find(s, "material");
+    if (material->count)
+        *record_value(s->sections[KEYS_POLYMER], "material") = material->options[0]; /* after picks */
     record_fill(r, s->sections[KEYS_POLYMER], material->count ? material->options[0].entry : NULL);
     record_fill(r, s->sections[KEYS_SOLUTIONS], like->entry);
     record_fill(r, s->sections[KEYS_BENCH], like->entry);
