@@ -11,8 +11,8 @@ static void condition(const struct page *page, const struct margin *m)
     const int pad = 34 - page_width(m->name);
     fprintf(page->to, "  %s%*s %14s ", m->name, pad > 0 ? pad : 0, "", reasons_value(m->nominal, m->unit).text);
     if (m->verdict == MARGIN_FOUND)
-        fprintf(page->to, " %s %s +- %s %s\n", m->up ? "up to  " : "down to", say_by_error(m->worst, m->se).text,
-                say_digits(m->se, 2).text, m->unit);
+        fprintf(page->to, " %s %s +- %s%s%s\n", m->up ? "up to  " : "down to", say_by_error(m->worst, m->se).text,
+                say_digits(m->se, 2).text, *m->unit ? " " : "", m->unit);
     else
         fprintf(page->to, " %s %s\n", m->up ? "up:    " : "down:  ", margin_verdict_text(m->verdict));
 }
