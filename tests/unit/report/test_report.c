@@ -108,7 +108,7 @@ static void end(struct run *r)
 static void plan(struct run *r)
 {
     begin(r);
-    const struct report_planned planned = {&r->search.result, &r->estimates};
+    const struct report_planned planned = {.search = &r->search.result, .estimates = &r->estimates};
     r->status = report_plan(&r->context, &planned);
     end(r);
 }
@@ -117,7 +117,7 @@ static void trial(struct run *r, const struct outcome *o)
 {
     begin(r);
     const bool played = o->studies > 0;
-    const struct report_tried tried = {4, o, played ? &r->estimates : NULL, played ? &r->example : NULL, false};
+    const struct report_tried tried = {.index = 4, .outcome = o, .estimates = played ? &r->estimates : NULL, .example = played ? &r->example : NULL, .within_too_narrow = false};
     r->status = report_trial(&r->context, &tried);
     end(r);
 }
@@ -251,7 +251,7 @@ static void nothing_is_possible(void **state)
     }
     r->search.result.nearest_miss = SEARCH_NONE;
     begin(r);
-    const struct report_planned planned = {&r->search.result, NULL};
+    const struct report_planned planned = {.search = &r->search.result, .estimates = NULL};
     r->status = report_plan(&r->context, &planned);
     end(r);
     assert_int_equal(r->status, 0);
