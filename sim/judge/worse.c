@@ -42,7 +42,8 @@ static bool lower(const struct played *dear, const struct played *cheap)
     return cheap->figure - dear->figure > BAR_BAND * hypot(cheap->se, dear->se);
 }
 
-/* Both again with a source switched off: does the order turn? */
+/* Both again with a source switched off: does the order turn, or is no more left
+ * of it than one standard error? */
 static bool turns(const struct scenario *s, const struct worse *pair, enum worse_cause source, bool *turned)
 {
     struct played now[2];
@@ -55,7 +56,7 @@ static bool turns(const struct scenario *s, const struct worse *pair, enum worse
         if (source == WORSE_DAYS) plan.habits.working_day_s = 1e9;
         if (!play(s, &plan, &now[i])) return false;
     }
-    *turned = now[1].figure >= now[0].figure;
+    *turned = now[0].figure - now[1].figure <= hypot(now[0].se, now[1].se);
     return true;
 }
 

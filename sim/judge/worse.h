@@ -19,7 +19,8 @@ struct worse {
  * where the dearer one's figure is lower by more than 3.3 standard errors of
  * the difference (taken as of independent ones, which same draws only make
  * smaller). Both are then played again with drift_u = 0, then with spare_runs =
- * 0, then on one endless day: what turns the order is the cause. Of each dearer plan the worst pair; at
+ * 0, then on one endless day: what turns the order (to within one standard
+ * error of the difference) is the cause. Of each dearer plan the worst pair; at
  * most `room`, *count of them. False: out of memory. */
 enum { WORSE_PLANS = 24 };
 bool worse_find(const struct scenario *s, size_t subject, size_t room, struct worse *out, size_t *count);
