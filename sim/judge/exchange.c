@@ -38,12 +38,13 @@ bool exchange_margin(const struct scenario *s, const struct plan *plan, size_t s
 struct offer {
     size_t fillings, runs;
     struct cost cost;
+    double least; /* in what the cheapest plan is least in */
 };
 
 static int cheaper_first(const void *a, const void *b)
 {
     const struct offer *const x = a, *const y = b;
-    return (x->cost.hours_s > y->cost.hours_s) - (x->cost.hours_s < y->cost.hours_s);
+    return (x->least > y->least) - (x->least < y->least);
 }
 
 static struct plan with(const struct plan *plan, const struct offer *offer)
@@ -60,9 +61,11 @@ static bool cost_offer(const struct scenario *s, const struct plan *plan, struct
     struct design design;
     const bool possible = p.fillings[INTACT] <= PLAN_MAX_FILLINGS && p.fillings[CLEAVED] <= PLAN_MAX_FILLINGS && p.runs <= PLAN_MAX_RUNS;
     offer->cost = (struct cost){(double)INFINITY, (double)INFINITY};
+    offer->least = (double)INFINITY;
     if (!possible) return true;
     const bool ok = design_make(&design, &p, scenario_cost(s), scenario_question(s));
     if (ok && !design_why(&design, &p.analysis)) offer->cost = cost_of(&design, scenario_cost(s), design.nominal_clock_s, 0.0);
+    offer->least = scenario_cost(s)->least == LEAST_HOURS ? offer->cost.hours_s : offer->cost.money;
     design_free(&design);
     return ok;
 }

@@ -71,19 +71,28 @@ static bool find_cause(const struct scenario *s, struct worse *pair)
     return true;
 }
 
+/* The subject, then the others that differ from it only in replicates. */
+static bool play_all(const struct scenario *s, size_t subject, struct played plan[WORSE_PLANS], size_t *plans)
+{
+    *plans = 0;
+    for (size_t k = 0; k <= scenario_candidates(s) && *plans < WORSE_PLANS; k++) {
+        const size_t i = k == 0 ? subject : k - 1;
+        struct plan p;
+        if ((k > 0 && i == subject) || !differs_only_in_replicates(s, subject, i)) continue;
+        scenario_plan(s, i, &p);
+        plan[*plans].index = i;
+        if (!play(s, &p, &plan[*plans])) return false;
+        *plans += plan[*plans].cost >= 0.0;
+    }
+    return true;
+}
+
 bool worse_find(const struct scenario *s, size_t subject, size_t room, struct worse *out, size_t *count)
 {
     struct played plan[WORSE_PLANS];
-    size_t plans = 0;
+    size_t plans;
     *count = 0;
-    for (size_t i = 0; i < scenario_candidates(s) && plans < WORSE_PLANS; i++) {
-        struct plan p;
-        if (!differs_only_in_replicates(s, subject, i)) continue;
-        scenario_plan(s, i, &p);
-        plan[plans].index = i;
-        if (!play(s, &p, &plan[plans])) return false;
-        plans += plan[plans].cost >= 0.0;
-    }
+    if (!play_all(s, subject, plan, &plans)) return false;
     for (size_t d = 0; d < plans && *count < room; d++) {
         const struct played *best = NULL;
         for (size_t c = 0; c < plans; c++)

@@ -4,7 +4,10 @@
  * Source: JCGM 100:2008 (GUM), 5.1.2, H.3; effective degrees of freedom by
  * Welch and Satterthwaite, G.4.1.
  * Left out by it, as in practice: what no scatter about a line shows (drifts,
- * calibrations, the pair, conversion, hydrolysis, solution offset). */
+ * calibrations, the pair, conversion, hydrolysis, solution offset). With a
+ * common intercept both lines rest on the same times, which the usual error bar
+ * takes as independent: it is then too short even for pure scatter (75 % instead
+ * of 95 %, tests/unit/reduce/test_claim.c). */
 #ifndef VICINAL_REDUCE_CLAIM_H
 #define VICINAL_REDUCE_CLAIM_H
 
