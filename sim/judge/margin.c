@@ -108,8 +108,8 @@ static bool look(const struct following *f, double at, double *margin)
 static bool close_in(const struct following *f, double good, double bad, const double margins[2])
 {
     double at_good = margins[0], at_bad = margins[1];
-    const double tolerance = 0.01;
-    for (int i = 0; i < 14 && fabs(bad - good) > tolerance * fmax(fabs(good), fabs(bad)); i++) {
+    const double tolerance = 0.01, origin = strcmp(f->c->section, "plan") == 0 ? 1.0 : 0.0; /* a relative viscosity counts from 1 */
+    for (int i = 0; i < 14 && fabs(bad - good) > tolerance * fmax(fabs(good - origin), fabs(bad - origin)); i++) {
         /* a straight line says nothing of where it fails altogether */
         double part = at_bad < -30.0 ? 0.5 : at_good / (at_good - at_bad), margin;
         part = fmin(fmax(part, 0.15), 0.85);
@@ -135,7 +135,7 @@ static bool follow(const struct following *f)
     struct margin *const m = f->out;
     const double end = m->up ? f->quantity.max : f->quantity.min, sign = m->up ? 1.0 : -1.0;
     double distance = fmax(0.25 * fabs(m->nominal), 1e-3 * (f->quantity.max - f->quantity.min)), good = m->nominal, at_good;
-    if (strncmp(f->c->section, "plan", 4) == 0) distance = 0.1; /* a relative viscosity counts from 1 */
+    if (strncmp(f->c->section, "plan", 4) == 0) distance = 0.1;
     if (!look(f, good, &at_good)) return false;
     m->worst = good;
     m->verdict = MARGIN_FAILS_ALREADY;
