@@ -12,7 +12,7 @@ set key off
 # A step of 1, 2 or 5 times a power of ten that gives two to five steps.
 power_of_ten(x) = 10 ** floor(log10(x))
 round_up(x) = (x <= 1 ? 1 : x <= 2 ? 2 : x <= 5 ? 5 : 10)
-tic_step(top) = round_up(top / 4 / power_of_ten(top / 4)) * power_of_ten(top / 4)
+tic_step(top) = round_up(top / 4.0 / power_of_ten(top / 4.0)) * power_of_ten(top / 4.0)
 
 at(series, what) = strcol(1) eq series && strcol(2) eq what ? column(3) : NaN
 

@@ -21,8 +21,8 @@ cut(s, n) = n < 1 ? strlen(s) : s[n:n] eq " " ? n : cut(s, n - 1)
 wrapped(s) = strlen(s) <= 25 ? s : s[1:cut(s, 25) - 1]."\n".s[cut(s, 25) + 1:*]
 
 do for [k=1:panels] {
-    from = value(sprintf("low_%d", k))
-    to = value(sprintf("high_%d", k))
+    from = 1.0 * value(sprintf("low_%d", k)) # never whole numbers, whose quotients would be whole
+    to = 1.0 * value(sprintf("high_%d", k))
     if (value(sprintf("log_%d", k)) > 0) {
         decades = log10(to / from)
         set logscale x
