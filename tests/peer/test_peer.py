@@ -25,6 +25,9 @@ import tempfile
 
 import peer
 
+sys.path.insert(0, str(pathlib.Path(__file__).resolve().parent.parent / "schema"))
+import validate  # noqa: E402
+
 STANDARD_ERRORS = 4.0
 ROUND = 1e-9
 SCENARIOS = pathlib.Path(__file__).parent / "scenarios"
@@ -119,6 +122,9 @@ def main():
         try:
             result, order = run_program(options.program, scenario, options.studies)
             stochastic, nominal, timetable = peer.trial(result["scenario"], options.studies, options.seed, order)
+            mistakes = validate.wrong(result)
+            if mistakes:
+                raise ValueError(f"not by the schema: {mistakes[:3]}")
             rows = compare(result["outcome"], stochastic, nominal) + [compare_order(order, timetable)]
         except Exception as problem:  # whatever stops a comparison is a failure, never a reason to skip
             print(f"  FAILED: {type(problem).__name__}: {problem}")

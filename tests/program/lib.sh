@@ -41,7 +41,9 @@ same() {
     diff -rq -x run.log -x '*.pdf' "$1" "$2" && [ "$(ls "$1")" = "$(ls "$2")" ]
 }
 
+# Every answer that a test left behind must be valid by its schema.
 end() {
+    say "every JSON file by its schema" "$python" "$project/tests/schema/validate.py" "$folder"
     echo "$passed passed, $failed failed"
     [ "$failed" = 0 ] || exit 1
     exit 0
