@@ -167,13 +167,14 @@ static void plain_false_alarm(const struct question *q, double *x, size_t n, siz
     const double z = gsl_cdf_ugaussian_Pinv(bar_level(q)), sign = q->expect > q->against ? 1.0 : -1.0;
     const double edge = bar_null(q) + sign * z * m.sd, count = (double)all;
     const double pull = m.sd > 0.0 ? moments_density(x, n, moments_scale(x, n), edge) * z / (2.0 * m.sd) : 0.0;
-    double sum = 0.0, sum2 = 0.0;
+    double sum = 0.0, sum2 = 0.0, beyond = 0.0;
     for (size_t i = 0; i < n; i++) {
         const double d = x[i] - m.mean, influence = (sign * (x[i] - edge) > 0.0 ? 1.0 : 0.0) - pull * (d * d - m.sd * m.sd);
-        out->at.plain_false_alarm += (sign * (x[i] - edge) > 0.0 ? 1.0 : 0.0) / count;
+        beyond += sign * (x[i] - edge) > 0.0 ? 1.0 : 0.0;
         sum += influence;
         sum2 += influence * influence;
     }
+    out->at.plain_false_alarm = beyond / count;
     out->se.plain_false_alarm = fmax(sqrt(fmax(sum2 / count - sum * sum / (count * count), 0.0) / count), share_se(0.0, all));
 }
 
