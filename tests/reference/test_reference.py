@@ -84,7 +84,7 @@ def density(T):
     return 999.974950 * (1 - (t - 3.983035) ** 2 * (t + 301.797) / (522528.9 * (t + 69.34881)))
 
 
-@computes("viscosity.release", "viscosity.library")
+@computes("viscosity.release", "viscosity.iapws")
 def viscosity(quantity, T):
     """iapws gives Pa s, though its text says mPa s."""
     return 1e6 * _Liquid(float(T))["mu"]

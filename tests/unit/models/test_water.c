@@ -51,7 +51,7 @@ static void viscosity_is_the_release(void **state)
 static void viscosity_is_that_of_the_library(void **state)
 {
     (void)state;
-    hold("viscosity.library", viscosity_uPa_s);
+    hold("viscosity.iapws", viscosity_uPa_s);
 }
 
 /* ISO/TR 3666 fixes 1.0016 mPa s at 20 degC. */
