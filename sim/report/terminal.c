@@ -111,6 +111,15 @@ void terminal_warnings(const struct page *page, const struct warnings *warnings)
         page_point(page, warnings->text[i]);
 }
 
+void terminal_end(const struct page *page, const struct report_context *context, const char *file,
+                  const struct outcome *outcome, const struct warnings *warnings)
+{
+    terminal_warnings(page, warnings);
+    page_blank(page);
+    page_say(page, PAGE_PLAIN, "The numbers are in %s/%s%s.", context->folder, file,
+             outcome->studies > 0 ? ", the figures beside it" : "");
+}
+
 void terminal_check(const struct page *page, const struct report_context *context, double seconds,
                     const struct warnings *warnings)
 {

@@ -27,6 +27,11 @@ void terminal_bench(const struct page *page, const struct terminal_subject *subj
 
 void terminal_warnings(const struct page *page, const struct warnings *warnings);
 
+/* How the answer about one plan ends: the warnings, and where the numbers lie
+ * (`file` in the folder) with the figures, if any study was played. */
+void terminal_end(const struct page *page, const struct report_context *context, const char *file,
+                  const struct outcome *outcome, const struct warnings *warnings);
+
 /* The whole answer of check. */
 void terminal_check(const struct page *page, const struct report_context *context, double seconds,
                     const struct warnings *warnings);

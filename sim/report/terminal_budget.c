@@ -80,7 +80,5 @@ void terminal_budget(const struct page *page, const struct report_context *conte
         shares(page, budget);
         shifts(page, budget);
     }
-    terminal_warnings(page, warnings);
-    page_blank(page);
-    page_say(page, PAGE_PLAIN, "The numbers are in %s/budget.json, the figures beside it.", context->folder);
+    terminal_end(page, context, "budget.json", o, warnings);
 }

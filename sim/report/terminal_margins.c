@@ -43,7 +43,5 @@ void terminal_margins(const struct page *page, const struct report_context *cont
         terminal_budget_why(page, NULL, margins, scenario_cost(s)->currency);
         conditions(page, margins);
     }
-    terminal_warnings(page, warnings);
-    page_blank(page);
-    page_say(page, PAGE_PLAIN, "The numbers are in %s/margin.json, the figures beside it.", context->folder);
+    terminal_end(page, context, "margin.json", o, warnings);
 }

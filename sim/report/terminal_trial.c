@@ -130,8 +130,5 @@ void terminal_trial(const struct page *page, const struct report_context *contex
         spreads(page, o);
         times(page, o);
     }
-    terminal_warnings(page, warnings);
-    page_blank(page);
-    page_say(page, PAGE_PLAIN, "The numbers are in %s/trial.json%s.", context->folder,
-             o->studies > 0 ? ", the figures beside it" : "");
+    terminal_end(page, context, "trial.json", o, warnings);
 }
